@@ -1,0 +1,41 @@
+import { fileURLToPath } from 'node:url'
+
+// Everything that changes how Coldslip is built. What changes how it runs is in server/settings.ts.
+export default defineNuxtConfig({
+  compatibilityDate: '2026-11-01',
+  modules: ['@pinia/nuxt', '@nuxtjs/tailwindcss', 'nuxt-auth-utils', '@nuxt/icon'],
+  devtools: { enabled: false },
+  telemetry: false,
+  css: ['~/assets/css/main.css'],
+  components: [{ path: '~/components', pathPrefix: false }],
+  imports: { dirs: ['composables/**', 'stores'] },
+  icon: { provider: 'none', serverBundle: false, clientBundle: { scan: true, sizeLimitKb: 256 } },
+  app: {
+    head: {
+      htmlAttrs: { lang: 'en' },
+      title: 'Coldslip',
+      meta: [
+        { name: 'viewport', content: 'width=device-width, initial-scale=1' },
+        { name: 'color-scheme', content: 'light dark' },
+      ],
+      link: [{ rel: 'icon', type: 'image/svg+xml', href: '/favicon.svg' }],
+    },
+  },
+  runtimeConfig: {
+    session: {
+      name: 'coldslip-session',
+      password: '',
+      maxAge: 60 * 60 * 24 * 7,
+      cookie: { sameSite: 'lax', httpOnly: true, path: '/', secure: false },
+      sessionHeader: false,
+    },
+  },
+  typescript: { strict: true, tsConfig: { compilerOptions: { noUncheckedIndexedAccess: true } } },
+  vite: { build: { chunkSizeWarningLimit: 900 } },
+  nitro: {
+    preset: 'node-server',
+    esbuild: { options: { target: 'node20' } },
+    externals: { inline: [] },
+    alias: { '#server': fileURLToPath(new URL('./server', import.meta.url)) },
+  },
+})
