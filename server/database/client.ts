@@ -1,0 +1,54 @@
+import { drizzle, type PostgresJsDatabase } from 'drizzle-orm/postgres-js'
+import postgres from 'postgres'
+import { settings } from '../settings'
+import * as audit from './schema/audit'
+import * as instruments from './schema/instruments'
+import * as limits from './schema/limits'
+import * as organisations from './schema/organisations'
+import * as readings from './schema/readings'
+import * as subjects from './schema/subjects'
+import * as submissions from './schema/submissions'
+
+export const schema = { ...organisations, ...instruments, ...subjects, ...limits, ...submissions, ...readings, ...audit }
+export type Database = PostgresJsDatabase<typeof schema>
+
+/**
+ * Two pools. The ORM replaces the serialisers of the client it is given (dates and JSON pass through as
+ * text), so bulk statements, COPY and LISTEN have a client of their own. Both are made here and nowhere
+ * else, so that they can be counted, and rebuilt.
+ */
+interface Pools {
+  database: Database
+  orm: postgres.Sql
+  bulk: postgres.Sql
+}
+
+let pools: Pools | null = null
+
+function connect(max: number): postgres.Sql {
+  return postgres(settings().databaseUrl, {
+    max,
+    connect_timeout: 5,
+    idle_timeout: 300,
+    max_lifetime: 3600,
+    onnotice: () => {},
+    connection: { application_name: 'coldslip', statement_timeout: 60_000, idle_in_transaction_session_timeout: 60_000 },
+  })
+}
+
+function open(): Pools {
+  if (!pools) {
+    const orm = connect(settings().poolSize)
+    pools = { orm, database: drizzle(orm, { schema }), bulk: connect(settings().poolSize) }
+  }
+  return pools
+}
+
+export const database = (): Database => open().database
+export const bulkClient = (): postgres.Sql => open().bulk
+
+export async function closePools(): Promise<void> {
+  const closing = pools
+  pools = null
+  if (closing) await Promise.all([closing.orm.end({ timeout: 3 }), closing.bulk.end({ timeout: 3 })])
+}
