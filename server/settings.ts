@@ -14,7 +14,6 @@ const environment = z.object({
   COLDSLIP_TRUSTED_PROXIES: z.coerce.number().int().min(0).max(10).default(0),
   COLDSLIP_POOL_SIZE: z.coerce.number().int().min(1).max(100).default(10),
   COLDSLIP_WORKERS: z.coerce.number().int().min(1).max(16).default(2),
-  COLDSLIP_SECURE_COOKIES: z.enum(['auto', 'always', 'never']).default('auto'),
   /** Where .data/demo.json is, written when the demo scenario was loaded. */
   COLDSLIP_DEMO_FILE: z.string().optional(),
 })
@@ -28,7 +27,6 @@ export interface Settings {
   trustedProxies: number
   poolSize: number
   workers: number
-  secureCookies: 'auto' | 'always' | 'never'
   demoFile: string | null
 }
 
@@ -51,7 +49,6 @@ export function settings(): Settings {
     trustedProxies: value.COLDSLIP_TRUSTED_PROXIES,
     poolSize: value.COLDSLIP_POOL_SIZE,
     workers: value.COLDSLIP_WORKERS,
-    secureCookies: value.COLDSLIP_SECURE_COOKIES,
     demoFile: value.COLDSLIP_DEMO_FILE ?? null,
   }
   return read

@@ -5,7 +5,7 @@ import { drizzle } from 'drizzle-orm/postgres-js'
 import { migrate as applyMigrations } from 'drizzle-orm/postgres-js/migrator'
 import PgBoss from 'pg-boss'
 import postgres from 'postgres'
-import { QUEUES } from '../jobs/definitions'
+import { QUEUES } from './queue/definitions'
 
 export interface MigrateOptions {
   /** Connection of a role that may create tables, roles and functions; never the application's. */

@@ -19,6 +19,7 @@ export const REFUSALS = {
   'unknown-substance': { scope: 'record', reason: 'The designation is not in the catalogue.', mend: 'Use the exact designation, for example R-134a.' },
   'duplicate-substance': { scope: 'record', reason: 'The substance stands twice in the composition.', mend: 'Report each substance once.' },
   'subject': { scope: 'record', reason: 'Nothing tells which vehicle was sampled.', mend: 'Send at least one of vin, plate and workOrder.' },
+  'instrument': { scope: 'record', reason: 'The device token speaks for another instrument.', mend: 'Send the reading with the token of its own instrument.' },
   'pressure': { scope: 'record', reason: 'A pressure needs its kind, and a kind its pressure.', mend: 'Send pressureKilopascal together with pressureKind "gauge" or "absolute".' },
   'sum': { scope: 'record', reason: 'The percentages do not add up to 100.', mend: 'Check the percentages, the display resolution, and whether air is counted apart or within.' },
   'duplicate-member': { scope: 'either', reason: 'The same member stands twice in one object.', mend: 'Send each member once.' },
