@@ -33,3 +33,12 @@ export interface DeviceTokenRow {
   lastUsedAt: string | null
   revokedAt: string | null
 }
+
+/** What a device token may do: hand readings in, read them back. */
+export const TOKEN_SCOPES = ['intake', 'read'] as const
+
+export const createTokenBody = z.object({
+  name: z.string().trim().min(1).max(100),
+  instrumentId: z.uuid(),
+  scopes: z.array(z.enum(TOKEN_SCOPES)).min(1).default(['intake']),
+})

@@ -1,0 +1,2 @@
+/** Who is signed in. */
+export default apiHandler(async event => (await requireMember(event, 'signed-in')).view)

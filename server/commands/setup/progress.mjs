@@ -1,0 +1,37 @@
+const live = process.stdout.isTTY === true
+const REMIND_MILLISECONDS = live ? 1000 : 15_000
+
+export function say(text = '') {
+  process.stdout.write(`${text}\n`)
+}
+
+function seconds(since) {
+  return `${((Date.now() - since) / 1000).toFixed(1)} s`
+}
+
+/**
+ * Runs a long step and shows that it is alive: a running clock on a terminal, a line every 15 seconds
+ * in a log.
+ *
+ * @template T
+ * @param {string} title
+ * @param {() => Promise<T>} work
+ * @returns {Promise<T>}
+ */
+export async function step(title, work) {
+  const began = Date.now()
+  process.stdout.write(live ? `… ${title}` : `… ${title}\n`)
+  const clock = setInterval(() => {
+    process.stdout.write(live ? `\r… ${title} (${Math.round((Date.now() - began) / 1000)} s)` : `  still busy: ${title} (${seconds(began)})\n`)
+  }, REMIND_MILLISECONDS)
+  try {
+    const result = await work()
+    say(`${live ? '\r\u001b[K' : ''}✓ ${title} (${seconds(began)})`)
+    return result
+  } catch (error) {
+    say(`${live ? '\r\u001b[K' : ''}✗ ${title} (${seconds(began)})`)
+    throw error
+  } finally {
+    clearInterval(clock)
+  }
+}
