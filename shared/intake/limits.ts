@@ -10,10 +10,10 @@ export const INTAKE_LIMITS = {
   jsonReadings: 5_000,
   /** Records in one NDJSON or CSV body. */
   streamRecords: 200_000,
-  /** Bytes of one line of NDJSON; of one record of CSV, with the line breaks inside its quotes. */
+  /** Bytes of one line; also characters of one CSV record with the line breaks inside its quotes. */
   lineBytes: 1024 * 1024,
-  /** Bytes of one CSV field. */
-  fieldBytes: 64 * 1024,
+  /** Characters (UTF-16 code units) of one CSV field. */
+  fieldCharacters: 64 * 1024,
   /** Columns of a CSV header. */
   csvColumns: 200,
   /** Objects and lists inside one another, in one record. */

@@ -8,10 +8,12 @@ export interface RawRecord {
   line: number | null
   /** What was decoded; undefined where `refusals` says why it couldn't be. */
   value: unknown
-  /** Source text of the record exactly as sent; of a line that is too long, its beginning. */
+  /** Source text of the record as sent; of a line that is too long, its beginning. What can't be stored (NUL, bytes that are no text) is U+FFFD in it. */
   raw: string
   /** Faults found while decoding; the record is then not held against the schema. */
   refusals?: Refusal[]
+  /** Only CSV: the cells as sent, and the names of their columns, so that a refusal can tell what stood there. */
+  cells?: { names: readonly string[], texts: readonly string[] }
   /** Only CSV: cells of columns that the schema doesn't know, by column name. Has no prototype. */
   extras?: Record<string, string>
   /** Tells how places are named back: JSON Pointer or column. */

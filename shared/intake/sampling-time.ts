@@ -4,8 +4,8 @@
  */
 export const SAMPLING_TIME_PATTERN = /^\d{4}-(0[1-9]|1[0-2])-(0[1-9]|[12]\d|3[01])T([01]\d|2[0-3]):[0-5]\d:[0-5]\d(\.\d{1,6})?(Z|[+-]([01]\d|2[0-3]):[0-5]\d)$/
 
-/** Years taken: an instrument with a dead clock says 1970, and must not lose its reading. */
-export const SAMPLING_YEARS = { first: 1970, last: 2099 } as const
+/** Years taken; what lies outside comes from a clock that was never set. */
+export const SAMPLING_YEARS = { first: 2000, last: 2099 } as const
 
 /** Says what is wrong with a sampling time; undefined where nothing is. */
 export function faultOfSamplingTime(text: string): string | undefined {
