@@ -1,4 +1,5 @@
 import { spawnSync } from 'node:child_process'
+import { statSync } from 'node:fs'
 import { PlainError } from './plain-error.mjs'
 
 function idOf(option) {
@@ -17,6 +18,16 @@ export function databaseUser() {
   const uid = idOf('-u')
   const gid = idOf('-g')
   if (uid === null || gid === null) throw new PlainError('PostgreSQL refuses to run as root and there is no user named postgres; make one (useradd --system postgres), or start as an ordinary user.')
+  return { uid, gid }
+}
+
+/** An existing database runs as the owner of its folder, whoever that was at first. */
+export function ownerOf(folder) {
+  const { uid, gid } = statSync(folder)
+  const me = process.getuid()
+  if (me === uid && me !== 0) return null
+  if (me !== 0) throw new PlainError(`The database in ${folder} belongs to another user (number ${uid}); start as that user, or as root.`)
+  if (uid === 0) throw new PlainError(`The database folder ${folder} belongs to root, as whom PostgreSQL refuses to run; give it back to its owner (chown -R postgres ${folder}).`)
   return { uid, gid }
 }
 
