@@ -1,0 +1,54 @@
+import { say } from './progress.mjs'
+import { stopChildren } from './run.mjs'
+
+const FORCE_AFTER_MILLISECONDS = 1000
+
+/** What is to be undone, newest first. */
+const undo = []
+let began = 0
+let exitCode = 0
+
+/** Remembers a step of the way down. `force` is called instead when the newcomer will not wait. */
+export function onStop(gently, force = () => {}) {
+  undo.push({ gently, force })
+}
+
+export function isStopping() {
+  return began > 0
+}
+
+/** Undoes everything in reverse order, then ends the process. Called twice, it goes on with the first code. */
+export async function stopAll(code) {
+  if (isStopping()) return
+  began = Date.now()
+  exitCode = code
+  stopChildren()
+  for (const { gently } of undo.toReversed()) {
+    try {
+      await gently()
+    } catch (error) {
+      exitCode ||= 1
+      process.stderr.write(`${error instanceof Error ? error.message : error}\n`)
+    }
+  }
+  process.exit(exitCode)
+}
+
+/** Ctrl-C, a closed terminal and `kill` all end in an orderly stop; a second Ctrl-C does not wait. */
+export function stopOnSignals() {
+  for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
+    process.on(signal, () => {
+      if (!isStopping()) {
+        say(`\nStopping (${signal}); once more ends it without waiting.`)
+        void stopAll(0)
+        return
+      }
+      // A terminal signals the whole group and npm passes its own copy on: that is one Ctrl-C, not two.
+      if (Date.now() - began < FORCE_AFTER_MILLISECONDS) return
+      say('Ending without waiting.')
+      stopChildren('SIGKILL')
+      for (const { force } of undo.toReversed()) force()
+      process.exit(1)
+    })
+  }
+}
