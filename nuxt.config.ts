@@ -9,6 +9,8 @@ export default defineNuxtConfig({
   css: ['~/assets/css/main.css'],
   components: [{ path: '~/components', pathPrefix: false }],
   imports: { dirs: ['composables/**', 'stores'] },
+  // The sign-in state is ours (a session row); the module only seals the cookie.
+  auth: { loadStrategy: 'none' },
   icon: { provider: 'none', serverBundle: false, clientBundle: { scan: true, sizeLimitKb: 256 } },
   app: {
     head: {

@@ -6,7 +6,8 @@ import { z } from 'zod'
  */
 const environment = z.object({
   DATABASE_URL: z.url({ protocol: /^postgres(ql)?$/, error: 'DATABASE_URL must be a postgres:// address' }),
-  NUXT_SESSION_PASSWORD: z.string().min(32, 'NUXT_SESSION_PASSWORD must have at least 32 characters'),
+  /** Seals the session cookie; a process that serves pages won't start without. */
+  NUXT_SESSION_PASSWORD: z.string().min(32, 'must have at least 32 characters').optional(),
   /** What this process does: serve pages and intake, work the queue, or both. */
   COLDSLIP_ROLE: z.enum(['all', 'web', 'worker']).default('all'),
   HOST: z.string().default('127.0.0.1'),
@@ -20,6 +21,7 @@ const environment = z.object({
 
 export interface Settings {
   databaseUrl: string
+  sessionPassword: string | null
   servesWeb: boolean
   runsWorker: boolean
   /** True where only this machine can reach the server; demo accounts work nowhere else. */
@@ -43,6 +45,7 @@ export function settings(): Settings {
   const host = value.HOST.replace(/^\[|\]$/g, '')
   read = {
     databaseUrl: value.DATABASE_URL,
+    sessionPassword: value.NUXT_SESSION_PASSWORD ?? null,
     servesWeb: value.COLDSLIP_ROLE !== 'worker',
     runsWorker: value.COLDSLIP_ROLE !== 'web',
     loopbackOnly: host === 'localhost' || host === '::1' || /^127\./.test(host),

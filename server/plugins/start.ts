@@ -11,7 +11,8 @@ export default defineNitroPlugin((nitro) => {
   let stopSweeping = () => {}
   void (async () => {
     try {
-      const { servesWeb, runsWorker } = settings()
+      const { servesWeb, runsWorker, sessionPassword } = settings()
+      if (servesWeb && !sessionPassword) throw new Error('Settings: NUXT_SESSION_PASSWORD is missing')
       if (runsWorker) {
         const work = await import('../jobs/work')
         await work.startWorkers()

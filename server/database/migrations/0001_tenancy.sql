@@ -170,7 +170,8 @@ BEGIN
   END IF;
   IF to_regclass('public.' || partition_name) IS NOT NULL THEN RETURN; END IF;
   PERFORM pg_advisory_xact_lock(hashtext('coldslip readings partitions'));
-  IF to_regclass('public.' || partition_name) IS NOT NULL THEN RETURN; END IF;
+  -- Asked of the catalogue itself: the name cache may still hold that there was none before the wait.
+  IF EXISTS (SELECT FROM pg_class WHERE relnamespace = 'public'::regnamespace AND relname = partition_name) THEN RETURN; END IF;
   EXECUTE format('CREATE TABLE %I (LIKE readings INCLUDING ALL)', partition_name);
   EXECUTE format('ALTER TABLE %I ENABLE ROW LEVEL SECURITY', partition_name);
   EXECUTE format('ALTER TABLE %I FORCE ROW LEVEL SECURITY', partition_name);

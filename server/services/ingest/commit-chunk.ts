@@ -149,7 +149,10 @@ async function placeAndJudge(tx: BulkTransaction, submission: OpenSubmission, fr
     const samples = reading.subject.kind === 'check' ? undefined : visits.get(subject.subjectId)
     const earlier = samples ? earlierInVisit(samples, at, reading.declared, subject.workOrderId) : []
     const { verdict, flags } = judge(candidate, instrument, limitsInForce(versions, candidate.sampledAt), earlier)
-    const digest = recordDigest({ readingId: candidate.readingId, contentDigest: candidate.contentDigest, submissionId: submission.id, ordinal: candidate.ordinal, revision: 1, verdict })
+    const digest = recordDigest({
+      readingId: candidate.readingId, contentDigest: candidate.contentDigest, submissionId: submission.id, ordinal: candidate.ordinal, revision: 1,
+      sampledAt: candidate.sampledAt, shopId, subjectId: subject.subjectId, instrumentId: instrument.id, declared: reading.declared, reported: reading.composition, verdict,
+    })
     placed[i] = { ...candidate, subject, instrument, verdict, flags, digest }
     if (reading.subject.kind !== 'check') {
       const sample: VisitSample = { composition: candidate.composition, resolutionPercent: reading.composition.resolution, sampledAt: at, workOrderId: subject.workOrderId, declared: reading.declared }

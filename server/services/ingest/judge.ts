@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto'
 import canonicalize from 'canonicalize'
 import { normaliseComposition } from '#shared/composition/normalise'
-import type { NormalisedComposition } from '#shared/composition/types'
+import type { NormalisedComposition, ReportedComposition } from '#shared/composition/types'
 import type { Flag } from '#shared/intake/kinds'
 import type { PurityReading } from '#shared/intake/reading-schema'
 import type { Substance } from '#shared/refrigerants/designations'
@@ -102,10 +102,19 @@ export interface RecordDigestInput {
   submissionId: string
   ordinal: number
   revision: number
+  sampledAt: Date
+  shopId: string
+  subjectId: string
+  instrumentId: string | null
+  declared: string
+  reported: ReportedComposition
   verdict: Verdict
 }
 
-/** SHA-256 over what a reading claims, in canonical JSON (RFC 8785): a leaf of the audit event's Merkle tree. */
+/**
+ * SHA-256 over what a reading claims, in canonical JSON (RFC 8785): a leaf of the audit event's Merkle
+ * tree. A changed column, composition or verdict no longer fits it.
+ */
 export function recordDigest(input: RecordDigestInput): Buffer {
   return createHash('sha256').update(canonicalize({
     reading: input.readingId,
@@ -113,12 +122,13 @@ export function recordDigest(input: RecordDigestInput): Buffer {
     submission: input.submissionId,
     ordinal: input.ordinal,
     revision: input.revision,
-    verdict: input.verdict.kind,
-    decidedBy: input.verdict.decidedBy,
-    purityPercent: input.verdict.purityPercent,
-    attempt: input.verdict.attempt,
-    limitSetVersion: input.verdict.limitSetVersion,
-    rule: input.verdict.rule,
+    sampledAt: input.sampledAt.toISOString(),
+    shop: input.shopId,
+    subject: input.subjectId,
+    instrument: input.instrumentId,
+    declared: input.declared,
+    reported: input.reported,
+    verdict: input.verdict,
   })!).digest()
 }
 
