@@ -4,6 +4,7 @@ export type IntakeFormat = 'json' | 'ndjson' | 'csv'
 export const INTAKE_MEDIA_TYPES = {
   'application/json': 'json',
   'application/x-ndjson': 'ndjson',
+  'application/ndjson': 'ndjson',
   'application/jsonl': 'ndjson',
   'text/csv': 'csv',
   'text/tab-separated-values': 'csv',
