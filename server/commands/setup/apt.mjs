@@ -17,9 +17,12 @@ export async function installDebianPackages(what, packages) {
   const env = { ...process.env, DEBIAN_FRONTEND: 'noninteractive', LC_ALL: 'C' }
   const lock = ['-o', 'DPkg::Lock::Timeout=300']
   if (!listsAreFresh) {
+    // Not decisive: with lists of yesterday the installation may still work, and says so itself if not.
     await step('Reading the list of Debian packages', () => run('apt-get', [...lock, 'update'], { env }))
     listsAreFresh = true
   }
-  const { code, output } = await step(`Installing ${what} (${packages.join(', ')})`, () => run('apt-get', [...lock, ...command.split(' ').slice(1)], { env }))
-  if (code !== 0) throw new PlainError(`${what} could not be installed with "${command}":\n${tail(output, 12)}`)
+  await step(`Installing ${what} (${packages.join(', ')})`, async () => {
+    const { code, output } = await run('apt-get', [...lock, ...command.split(' ').slice(1)], { env })
+    if (code !== 0) throw new PlainError(`${what} could not be installed with "${command}":\n${tail(output, 12)}`)
+  })
 }

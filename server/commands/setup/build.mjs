@@ -42,7 +42,11 @@ export async function ensureBuild(root, logFolder) {
   mkdirSync(logFolder, { recursive: true })
   const log = join(logFolder, 'build.log')
   const env = { ...npmEnvironment(), NUXT_TELEMETRY_DISABLED: '1', CI: '1' }
-  const { code, output } = await step('Building pages and server', () => run(process.execPath, [join(root, 'node_modules/nuxt/bin/nuxt.mjs'), 'build'], { cwd: root, env, log }))
-  if (code !== 0 || !existsSync(join(root, '.output/server/index.mjs'))) throw new PlainError(`The build failed; its whole output is in ${log}. The end of it:\n${tail(output)}`)
+  await step('Building pages and server', async () => {
+    const { code, output } = await run(process.execPath, [join(root, 'node_modules/nuxt/bin/nuxt.mjs'), 'build'], { cwd: root, env, log })
+    if (code === 0 && existsSync(join(root, '.output/server/index.mjs'))) return
+    const cause = output.split('\n').find(line => line.startsWith('Error: ')) ?? ''
+    throw new PlainError(`The build failed; its whole output is in ${log}. ${cause}\nThe end of it:\n${tail(output, 15)}`)
+  })
   writeFileSync(stamp, digest)
 }

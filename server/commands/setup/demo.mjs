@@ -18,10 +18,12 @@ import { run, tail } from './run.mjs'
 export async function ensureDemo({ root, demoFile, baseUrl, env, owner, databaseIsNew }) {
   if (databaseIsNew || !existsSync(demoFile)) {
     const log = join(root, '.data/demo.log')
-    const { code, output } = await step('Loading the demo scenario', () => run(process.execPath, ['--import', 'tsx', 'server/commands/load-demo.ts'], {
-      cwd: root, log, env: { ...env, OWNER_DATABASE_URL: owner, DEMO_FILE: demoFile, BASE_URL: baseUrl },
-    }))
-    if (code !== 0 || !existsSync(demoFile)) throw new PlainError(`The demo scenario was not loaded; its log is ${log}. The end of it:\n${tail(output, 10)}`)
+    await step('Loading the demo scenario', async (detail) => {
+      const { code, output } = await run(process.execPath, ['--import', 'tsx', 'server/commands/load-demo.ts'], {
+        cwd: root, log, onLine: detail, env: { ...env, OWNER_DATABASE_URL: owner, DEMO_FILE: demoFile, BASE_URL: baseUrl },
+      })
+      if (code !== 0 || !existsSync(demoFile)) throw new PlainError(`The demo scenario was not loaded; its log is ${log}. The end of it:\n${tail(output, 10)}`)
+    })
   }
   const demo = readDemo(demoFile)
   if (demo.baseUrl === baseUrl) return demo

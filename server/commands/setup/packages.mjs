@@ -19,8 +19,10 @@ export async function ensurePackages(root) {
   const stamp = join(root, 'node_modules/.coldslip-lock')
   const digest = createHash('sha256').update(readFileSync(join(root, 'package-lock.json'))).digest('hex')
   if (existsSync(stamp) && readFileSync(stamp, 'utf8') === digest) return
-  const { code, output } = await step('Installing packages', () => run('npm', ['ci', '--include=dev', '--no-fund', '--no-audit'], { cwd: root, env: npmEnvironment() }))
-  if (code === 127) throw new PlainError('npm was not found; install it together with Node 20.')
-  if (code !== 0) throw new PlainError(`npm ci failed:\n${tail(output)}`)
+  await step('Installing packages', async () => {
+    const { code, output } = await run('npm', ['ci', '--include=dev', '--no-fund', '--no-audit'], { cwd: root, env: npmEnvironment() })
+    if (code === 127) throw new PlainError('npm was not found; install it together with Node 20.')
+    if (code !== 0) throw new PlainError(`npm ci failed:\n${tail(output)}`)
+  })
   writeFileSync(stamp, digest)
 }

@@ -15,17 +15,19 @@ function seconds(since) {
  *
  * @template T
  * @param {string} title
- * @param {() => Promise<T>} work
+ * @param {(detail: (text: string) => void) => Promise<T>} work may tell how far it is
  * @returns {Promise<T>}
  */
 export async function step(title, work) {
   const began = Date.now()
   process.stdout.write(live ? `… ${title}` : `… ${title}\n`)
+  let far = ''
   const clock = setInterval(() => {
-    process.stdout.write(live ? `\r… ${title} (${Math.round((Date.now() - began) / 1000)} s)` : `  still busy: ${title} (${seconds(began)})\n`)
+    const line = `${title} (${Math.round((Date.now() - began) / 1000)} s)${far ? `: ${far}` : ''}`
+    process.stdout.write(live ? `\r\u001b[K… ${line.slice(0, (process.stdout.columns || 80) - 3)}` : `  still busy: ${line}\n`)
   }, REMIND_MILLISECONDS)
   try {
-    const result = await work()
+    const result = await work((text) => { far = text })
     say(`${live ? '\r\u001b[K' : ''}✓ ${title} (${seconds(began)})`)
     return result
   } catch (error) {

@@ -20,9 +20,10 @@ export function stopChildren(signal = 'SIGTERM') {
  * @param {{ uid: number, gid: number } | null} [options.as] the user to run as; only root may give one
  * @param {string} [options.log] file that gets the output instead of the answer
  * @param {boolean} [options.show] output goes straight to the screen
+ * @param {(line: string) => void} [options.onLine] told the newest line of the output
  * @returns {Promise<{ code: number, output: string }>} output is the last 64 KiB, empty with `show`
  */
-export async function run(program, args, { cwd, env = process.env, as = null, log, show = false } = {}) {
+export async function run(program, args, { cwd, env = process.env, as = null, log, show = false, onLine } = {}) {
   const child = spawn(program, args, {
     cwd,
     env,
@@ -38,6 +39,8 @@ export async function run(program, args, { cwd, env = process.env, as = null, lo
       stream.on('data', (text) => {
         output = (output + text).slice(-65_536)
         file?.write(text)
+        const line = text.trimEnd().split('\n').at(-1)
+        if (line) onLine?.(line)
       })
     }
   }

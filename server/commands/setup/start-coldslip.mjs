@@ -69,7 +69,7 @@ async function demoFor({ root, dataFolder, baseUrl, host, env, owner, named, dat
 
 /** Everything that `npm start` does, until Ctrl-C. */
 export async function startColdslip() {
-  stopOnSignals()
+  stopOnSignals(0)
   try {
     await bringUp()
   } catch (error) {

@@ -17,8 +17,13 @@ export function isStopping() {
   return began > 0
 }
 
-/** Undoes everything in reverse order, then ends the process. Called twice, it goes on with the first code. */
-export async function stopAll(code) {
+/**
+ * Undoes everything in reverse order, then ends the process. Called again, it changes nothing.
+ *
+ * @param {number} code exit code
+ * @param {() => void} [lastWord] said when all is undone
+ */
+export async function stopAll(code, lastWord = () => {}) {
   if (isStopping()) return
   began = Date.now()
   exitCode = code
@@ -31,16 +36,21 @@ export async function stopAll(code) {
       process.stderr.write(`${error instanceof Error ? error.message : error}\n`)
     }
   }
+  lastWord()
   process.exit(exitCode)
 }
 
-/** Ctrl-C, a closed terminal and `kill` all end in an orderly stop; a second Ctrl-C does not wait. */
-export function stopOnSignals() {
+/**
+ * Ctrl-C, a closed terminal and `kill` all end in an orderly stop; a second Ctrl-C does not wait.
+ *
+ * @param {number} codeOfSignal exit code of an orderly stop that a signal asked for
+ */
+export function stopOnSignals(codeOfSignal) {
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
     process.on(signal, () => {
       if (!isStopping()) {
         say(`\nStopping (${signal}); once more ends it without waiting.`)
-        void stopAll(0)
+        void stopAll(codeOfSignal)
         return
       }
       // A terminal signals the whole group and npm passes its own copy on: that is one Ctrl-C, not two.
