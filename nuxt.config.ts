@@ -7,6 +7,7 @@ export default defineNuxtConfig({
   devtools: { enabled: false },
   telemetry: false,
   css: ['~/assets/css/main.css'],
+  tailwindcss: { cssPath: '~/assets/css/main.css' },
   components: [{ path: '~/components', pathPrefix: false }],
   imports: { dirs: ['composables/**', 'stores'] },
   // The sign-in state is ours (a session row); the module only seals the cookie.

@@ -1,0 +1,139 @@
+import type { ReadingDetail, ReadingRow } from '#shared/api/readings'
+import type { Designation, Substance } from '#shared/refrigerants/designations'
+import type { RuleOutcome } from '#shared/verdict/types'
+import { figure } from './figures'
+import { substanceName } from './substance-look'
+
+/** A limit as the lens draws it, on the axis of its lane, in percent. */
+export interface LaneLimit {
+  at: number
+  words: string
+  /** Where the guard band in front of the limit begins; null where the rule has none. */
+  guardFrom: number | null
+}
+
+/** One contaminant in the lens. Numbers in percent. */
+export interface Lane {
+  substance: Substance | 'air'
+  percent: number
+  /** Expanded uncertainty (k = 2); null where it is not known. */
+  uncertainty: number | null
+  belowDetection: boolean
+  /** `of the sample` for air, `air-free` for the rest. */
+  basis: string
+  limits: LaneLimit[]
+  outcome: RuleOutcome | null
+}
+
+/** Everything that the strip and the lens draw. Numbers in percent by mass. */
+export interface Strip {
+  declared: Designation
+  purityPercent: number
+  purityUncertainty: number | null
+  purityMinimum: number | null
+  resolution: number
+  /** Largest first; air last. */
+  lanes: Lane[]
+}
+
+const OUTCOME_ORDER: readonly RuleOutcome[] = ['fail', 'unclear', 'absent', 'warn', 'pass']
+
+/** From a row of the results browser: no limits, no uncertainties of the parts. */
+export function stripFromRow(row: Pick<ReadingRow, 'declared' | 'purityPercent' | 'purityUncertainty' | 'resolution' | 'contaminants' | 'airPercent'>): Strip {
+  const lanes: Lane[] = row.contaminants.map(part => ({
+    substance: part.substance, percent: part.percent, uncertainty: null, belowDetection: false, basis: 'air-free', limits: [], outcome: null,
+  }))
+  if (row.airPercent !== null) {
+    lanes.push({ substance: 'air', percent: row.airPercent, uncertainty: null, belowDetection: false, basis: 'of the sample', limits: [], outcome: null })
+  }
+  return {
+    declared: row.declared, purityPercent: row.purityPercent, purityUncertainty: row.purityUncertainty, purityMinimum: null, resolution: row.resolution, lanes,
+  }
+}
+
+type Judged = Pick<ReadingDetail, 'declared' | 'purityPercent' | 'purityUncertainty' | 'resolution' | 'composition' | 'rules' | 'marks' | 'limitSet'>
+
+/** From a whole reading: each lane with the limits, guard bands and uncertainties of the rules that looked at it. */
+export function stripFromDetail(reading: Judged): Strip {
+  const guard = reading.limitSet.decision === 'guarded' ? reading.limitSet.guardFactor : 0
+  const lane = (substance: Substance | 'air', percent: number, belowDetection: boolean, highest: number): Lane => {
+    const rules = reading.rules.filter(rule => substance === 'air'
+      ? rule.rule === 'air-caution' || rule.rule === 'air-action'
+      : rule.substance === substance && (rule.rule === 'foreign' || rule.rule === 'flammable' || rule.rule === 'unknown'))
+    const measured = rules.find(rule => rule.measured !== null)
+    const uncertainty = rules.find(rule => rule.uncertainty !== null)?.uncertainty ?? null
+    const limits = rules.filter(rule => rule.limit !== null).map((rule): LaneLimit => ({
+      at: rule.limit!,
+      words: limitWords(rule.rule),
+      guardFrom: guard > 0 && rule.uncertainty !== null ? Math.max(0, rule.limit! - guard * rule.uncertainty) : null,
+    }))
+    return {
+      substance,
+      percent: belowDetection ? highest : measured?.measured ?? percent,
+      uncertainty: belowDetection ? null : uncertainty,
+      belowDetection,
+      basis: substance === 'air' ? rules[0]?.words.unit ?? 'of the sample' : 'air-free',
+      limits: limits.length > 0 ? distinct(limits) : standingLimits(substance, reading.marks),
+      outcome: rules.map(rule => rule.outcome).sort((a, b) => OUTCOME_ORDER.indexOf(a) - OUTCOME_ORDER.indexOf(b))[0] ?? null,
+    }
+  }
+  const lanes = reading.composition.parts
+    .filter(part => part.substance !== reading.declared && (part.massFraction > 0 || part.belowDetection))
+    .map(part => lane(part.substance, part.massFraction * 100, part.belowDetection, part.massFractionHigh * 100))
+    .sort((a, b) => Number(a.belowDetection) - Number(b.belowDetection) || b.percent - a.percent)
+  const air = reading.composition.air
+  if (air) lanes.push(lane('air', air.massFraction * 100, air.belowDetection, air.massFractionHigh * 100))
+  return {
+    declared: reading.declared,
+    purityPercent: reading.purityPercent,
+    purityUncertainty: reading.purityUncertainty,
+    purityMinimum: reading.marks.purityMinimum,
+    resolution: reading.resolution,
+    lanes,
+  }
+}
+
+function limitWords(rule: string): string {
+  return ({ 'foreign': 'foreign', 'flammable': 'flammable', 'unknown': 'unknown', 'air-caution': 'caution', 'air-action': 'action' } as Record<string, string>)[rule] ?? rule
+}
+
+function standingLimits(substance: Substance | 'air', marks: ReadingDetail['marks']): LaneLimit[] {
+  const at = (value: number, words: string): LaneLimit => ({ at: value, words, guardFrom: null })
+  if (substance === 'air') return [at(marks.airCaution, 'caution'), at(marks.airAction, 'action')]
+  if (substance === 'HC') return [at(marks.flammableMaximum, 'flammable')]
+  if (substance === 'OTHER') return [at(marks.unknownMaximum, 'unknown')]
+  return [at(marks.foreignMaximum, 'foreign')]
+}
+
+/** Two rules with the same limit make one tick; the wider guard band is drawn. */
+function distinct(limits: LaneLimit[]): LaneLimit[] {
+  const byPlace = new Map<number, LaneLimit>()
+  for (const limit of limits) {
+    const known = byPlace.get(limit.at)
+    const guardFrom = known?.guardFrom === undefined || known.guardFrom === null ? limit.guardFrom : Math.min(known.guardFrom, limit.guardFrom ?? known.guardFrom)
+    byPlace.set(limit.at, known ? { ...known, words: `${known.words}, ${limit.words}`, guardFrom } : limit)
+  }
+  return [...byPlace.values()].sort((a, b) => a.at - b.at)
+}
+
+const SCALES = [5, 10, 20, 50, 100] as const
+
+/** Right end of the lens in percent: 5 where everything that it must show fits, wider when needed. */
+export function lensEnd(lanes: readonly Lane[]): number {
+  const furthest = Math.max(0, ...lanes.flatMap(lane => [lane.percent + (lane.uncertainty ?? 0), ...lane.limits.map(limit => limit.at)]))
+  return SCALES.find(end => furthest <= end) ?? 100
+}
+
+/** Five or six round ticks from 0 to the end of the lens. */
+export function lensTicks(end: number): number[] {
+  const step = end / 5
+  return Array.from({ length: 6 }, (_, index) => index * step)
+}
+
+/** The strip in one sentence, for those who do not see it. */
+export function stripSentence(strip: Strip): string {
+  const share = (lane: Lane) => `${substanceName(lane.substance)} ${lane.belowDetection ? 'below ' : ''}${figure(lane.percent, strip.resolution)} %`
+  const spread = strip.purityUncertainty === null ? '' : ` plus or minus ${figure(strip.purityUncertainty, strip.resolution)}`
+  const rest = strip.lanes.length > 0 ? strip.lanes.map(share).join(', ') : 'nothing else found'
+  return `${strip.declared} ${figure(strip.purityPercent, strip.resolution)}${spread} % by mass, air-free; ${rest}.`
+}
