@@ -9,36 +9,55 @@ const order: ReadonlyMap<string, number> = new Map(SUBSTANCES.map((substance, in
  * equal text here are the same reading sent twice. Order of members and of parts, an empty text in place
  * of none, and the offset in which the moment is written make no difference; the form of the submission
  * (JSON, NDJSON, CSV) makes none either.
+ *
+ * RFC 8785 is what `JSON.stringify` writes once the members stand in order of their names, so they are
+ * written down here in that order: several times faster than sorting, and a test holds it against a
+ * package that sorts.
  */
 export function canonicalReading(reading: PurityReading): string {
-  return canonicalJson(contentOf(reading))
-}
-
-function contentOf(reading: PurityReading): unknown {
-  const { composition, conditions } = reading
-  const parts = composition.parts.toSorted((a, b) => order.get(a.substance)! - order.get(b.substance)!)
-  return {
-    ...reading,
-    sampledAt: momentOf(reading.sampledAt),
-    composition: { ...composition, parts },
-    conditions: conditions !== undefined && Object.values(conditions).some(value => value !== undefined) ? conditions : undefined,
-    operator: reading.operator || undefined,
+  const { composition, conditions, instrument } = reading
+  const subject: SubjectMembers = reading.subject
+  return JSON.stringify({
     batch: reading.batch || undefined,
+    composition: {
+      air: composition.air,
+      airPercent: composition.airPercent,
+      airQualifier: composition.airQualifier,
+      basis: composition.basis,
+      parts: composition.parts
+        .map(({ percent, qualifier, substance }) => ({ percent, qualifier, substance }))
+        .sort((a, b) => order.get(a.substance)! - order.get(b.substance)!),
+      resolution: composition.resolution,
+    },
+    conditions: isEmpty(conditions) ? undefined : {
+      ambientCelsius: conditions.ambientCelsius,
+      pressureKilopascal: conditions.pressureKilopascal,
+      pressureKind: conditions.pressureKind,
+    },
+    declared: reading.declared,
+    id: reading.id,
+    instrument: { sequence: instrument.sequence, serial: instrument.serial },
     note: reading.note || undefined,
-  }
+    operator: reading.operator || undefined,
+    sampledAt: momentOf(reading.sampledAt),
+    schema: reading.schema,
+    subject: {
+      kind: subject.kind,
+      number: subject.number,
+      plate: subject.plate,
+      port: subject.port,
+      standard: subject.standard,
+      tag: subject.tag,
+      vin: subject.vin,
+      workOrder: subject.workOrder,
+    },
+  })
 }
 
-/**
- * RFC 8785 for values that `JSON.stringify` can write: members in order of the UTF-16 code units of
- * their names, numbers and texts as ECMAScript writes them. Members that are undefined are left out.
- */
-export function canonicalJson(value: unknown): string {
-  if (typeof value !== 'object' || value === null) return JSON.stringify(value)
-  if (Array.isArray(value)) return `[${value.map(canonicalJson).join(',')}]`
-  const members: string[] = []
-  for (const name of Object.keys(value).sort()) {
-    const member = (value as Record<string, unknown>)[name]
-    if (member !== undefined) members.push(`${JSON.stringify(name)}:${canonicalJson(member)}`)
-  }
-  return `{${members.join(',')}}`
+/** The members of every kind of subject; each reading has those of its own kind. */
+type SubjectMembers = { kind: string } & { [Name in Exclude<keyof UnionToIntersection<PurityReading['subject']>, 'kind'>]?: string }
+type UnionToIntersection<Union> = (Union extends unknown ? (member: Omit<Union, 'kind'>) => void : never) extends (member: infer Whole) => void ? Whole : never
+
+function isEmpty(conditions: PurityReading['conditions']): conditions is undefined {
+  return conditions === undefined || (conditions.ambientCelsius === undefined && conditions.pressureKilopascal === undefined && conditions.pressureKind === undefined)
 }

@@ -10,7 +10,7 @@ export interface CsvHeader {
   delimiter: CsvDelimiter
   /** Names as they are told back: known ones in their own spelling, others as sent. */
   names: readonly string[]
-  /** Place of each known column that the header names. */
+  /** Place of each known column that the header names, in the order of the column table. */
   known: readonly { column: CsvColumn, index: number }[]
   /** Place of each column that the schema doesn't know. */
   extras: readonly { name: string, index: number }[]
@@ -34,10 +34,7 @@ export function readCsvHeader(text: string, line: number, split: SplitCsvFields)
   const { delimiter, cells } = bestSplit(text, split)
   if (cells === undefined) return { ok: false, failure: failWhole('header', { reason: 'The quotes of the header row are broken.', place }) }
   const names = cells.map((cell, index) => nameOf(cell, index))
-  const known = names.flatMap((name, index) => {
-    const column = csvColumnsByName.get(name)
-    return column === undefined ? [] : [{ column, index }]
-  })
+  const known = csvColumns.map(column => ({ column, index: names.indexOf(column.name) })).filter(({ index }) => index >= 0)
   const missing = csvColumns.filter(column => column.required && !known.some(entry => entry.column === column)).map(column => column.name)
   if (!known.some(({ column }) => column.substance !== undefined)) missing.push('a percentage such as r134a_pct')
   if (missing.length > 0) {

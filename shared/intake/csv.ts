@@ -5,6 +5,7 @@ import { csvRowToRecord } from './csv-row'
 import { LineSplitter, type ByteLine } from './line-splitter'
 import type { RawRecord } from './raw-record'
 import { cutText, refuse, type DecodeFailure, type Refusal } from './refusal'
+import { withoutUtf8Mark } from './utf8'
 
 export interface CsvBounds {
   /** Bytes of a line; also characters of a record with the line breaks inside its quotes. */
@@ -78,7 +79,7 @@ export class CsvDecoder {
 
   private readonly take = (line: ByteLine): void => {
     if (this.failure !== null) return
-    const { text, fault } = this.text.decode(line.bytes)
+    const { text, fault } = this.text.decode(line.line === 1 ? withoutUtf8Mark(line.bytes) : line.bytes)
     if (this.header === null) {
       this.takeHeader(line, text, fault)
       return

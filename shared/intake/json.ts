@@ -2,7 +2,7 @@ import { JsonSyntaxFault, TooManyElements, scanJson, type ScannedText, type Scan
 import { INTAKE_LIMITS } from './limits'
 import type { RawRecord } from './raw-record'
 import { failWhole, refuse, type DecodeFailure } from './refusal'
-import { decodeUtf8, offsetOfUtf8Fault } from './utf8'
+import { decodeUtf8, offsetOfUtf8Fault, withoutUtf8Mark } from './utf8'
 
 /** Member of the body that holds many readings. */
 export const READINGS_MEMBER = 'readings'
@@ -20,7 +20,7 @@ export interface JsonBounds {
  * Never throws. Faults inside one record refuse that record only.
  */
 export function decodeJson(bytes: Uint8Array, bounds: JsonBounds): JsonDecoding {
-  const text = decodeUtf8(bytes)
+  const text = decodeUtf8(withoutUtf8Mark(bytes))
   if (text === undefined) {
     return failed(failWhole('encoding', { reason: 'The body is not UTF-8.', place: `byte ${offsetOfUtf8Fault(bytes)}` }))
   }

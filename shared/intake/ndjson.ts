@@ -2,7 +2,7 @@ import { decodeJsonRecord } from './json'
 import { LineSplitter, type ByteLine } from './line-splitter'
 import type { RawRecord } from './raw-record'
 import { cutText, refuse, type Refusal } from './refusal'
-import { decodeUtf8, offsetOfUtf8Fault } from './utf8'
+import { decodeUtf8, offsetOfUtf8Fault, withoutUtf8Mark } from './utf8'
 
 export interface NdjsonBounds {
   lineBytes: number
@@ -46,7 +46,7 @@ export class NdjsonDecoder {
     if (tooLong) {
       return this.refuseLine(line, bytes, refuse('line-too-long', { line, pointer: '', reason: `The line is longer than ${this.bounds.lineBytes} bytes.`, value: lenient.decode(bytes.subarray(0, 1_000)) }))
     }
-    const text = decodeUtf8(bytes)
+    const text = decodeUtf8(line === 1 ? withoutUtf8Mark(bytes) : bytes)
     if (text === undefined) {
       return this.refuseLine(line, bytes, refuse('encoding', { line, pointer: '', reason: `The line is not UTF-8 from its byte ${offsetOfUtf8Fault(bytes) + 1} on.`, value: lenient.decode(bytes.subarray(0, 1_000)) }))
     }

@@ -1,16 +1,17 @@
 const strict = new TextDecoder('utf-8', { fatal: true, ignoreBOM: true })
 
-/** Strict UTF-8, without a byte-order mark at its beginning; undefined where the bytes are no UTF-8. */
+/** Strict UTF-8; undefined where the bytes are no UTF-8. A byte-order mark stays in the text. */
 export function decodeUtf8(bytes: Uint8Array): string | undefined {
   try {
-    return strict.decode(startsWithUtf8Mark(bytes) ? bytes.subarray(3) : bytes)
+    return strict.decode(bytes)
   } catch {
     return undefined
   }
 }
 
-export function startsWithUtf8Mark(bytes: Uint8Array): boolean {
-  return bytes.length >= 3 && bytes[0] === 0xEF && bytes[1] === 0xBB && bytes[2] === 0xBF
+/** The beginning of a text without its byte-order mark. */
+export function withoutUtf8Mark(bytes: Uint8Array): Uint8Array {
+  return bytes[0] === 0xEF && bytes[1] === 0xBB && bytes[2] === 0xBF ? bytes.subarray(3) : bytes
 }
 
 /** Offset of the first byte that is not part of well-formed UTF-8 (Unicode 15, table 3-7); −1 where all are. */
