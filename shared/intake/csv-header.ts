@@ -44,9 +44,9 @@ export function readCsvHeader(text: string, line: number, split: SplitCsvFields)
       place,
     }) }
   }
+  if (names.length > INTAKE_LIMITS.csvColumns) return { ok: false, failure: failWhole('header', { reason: `The header names ${names.length} columns; at most ${INTAKE_LIMITS.csvColumns} are read.`, place }) }
   const twice = names.find((name, index) => names.indexOf(name) < index)
   if (twice !== undefined) return { ok: false, failure: failWhole('duplicate-column', { reason: `The column "${twice.slice(0, MOST_NAME)}" stands twice in the header.`, place: `${place}, column ${names.lastIndexOf(twice) + 1}` }) }
-  if (names.length > INTAKE_LIMITS.csvColumns) return { ok: false, failure: failWhole('header', { reason: `The header names ${names.length} columns; at most ${INTAKE_LIMITS.csvColumns} are read.`, place }) }
   const unfit = names.findIndex(name => name.length > MOST_NAME || /[\u0000-\u001f\ud800-\udfff]/u.test(name))
   if (unfit >= 0) return { ok: false, failure: failWhole('header', { reason: `The name of column ${unfit + 1} is longer than ${MOST_NAME} characters or holds control characters.`, place: `${place}, column ${unfit + 1}` }) }
   const extras = names.flatMap((name, index) => csvColumnsByName.has(name) ? [] : [{ name, index }])

@@ -19,6 +19,9 @@ export interface CsvReport {
   extraColumns: string[]
 }
 
+/** More lines than this hang in no quotes that are meant: the longest text that a reading has is 2,000 characters. */
+const MOST_OPEN_LINES = 2_000
+
 interface TextLine {
   line: number
   text: string
@@ -113,7 +116,9 @@ export class CsvDecoder {
       this.open.push(line)
       this.openLength += line.text.length + line.ending.length
       this.lines.keepEmpty = true
-      if (this.openLength > this.bounds.lineBytes) this.giveUpOpenQuote(`The quote that opens in line ${this.open[0]!.line} is not closed within ${this.bounds.lineBytes} characters.`)
+      if (this.openLength > this.bounds.lineBytes || this.open.length > MOST_OPEN_LINES) {
+        this.giveUpOpenQuote(`The quote that opens in line ${this.open[0]!.line} is not closed within ${MOST_OPEN_LINES} lines or ${this.bounds.lineBytes} characters.`)
+      }
     } else if (inside) {
       const first = this.open[0]!
       const raw = this.open.map(({ text, ending }) => text + ending).join('') + line.text

@@ -117,6 +117,13 @@ describe('the header', () => {
     expect((await decode(`${H}${more(188)}\n${B}${','.repeat(188)}`)).failure).toMatchObject({ code: 'header' })
   })
 
+  it('far too many columns, at once', async () => {
+    const begin = performance.now()
+    const { failure } = await decode(`${H},${Array.from({ length: 150_000 }, (_, index) => index.toString(36)).join(',')}\n`)
+    expect(failure).toMatchObject({ code: 'header' })
+    expect(performance.now() - begin).toBeLessThan(3_000)
+  })
+
   it.each([
     ['C21 a workbook', Buffer.from([0x50, 0x4B, 3, 4, 0x14, 0, 6, 0])],
     ['an older workbook', Buffer.from([0xD0, 0xCF, 0x11, 0xE0, 0xA1, 0xB1])],
@@ -155,6 +162,12 @@ describe('rows', () => {
     const { readings, refusals } = await decode(`${H}\n${rows.join('\n')}\n`, { limits: { lineBytes: 2_000 } })
     expect(refusals).toEqual([expect.objectContaining({ code: 'quote', line: 3 })])
     expect(readings).toHaveLength(199)
+  })
+
+  it('a quote that is not closed within any number of blank lines', async () => {
+    const { readings, refusals } = await decode(`${H}\n${B}"open${'\n'.repeat(10_000)}${B}\n`)
+    expect(refusals).toEqual([expect.objectContaining({ code: 'quote', line: 2 })])
+    expect(readings).toHaveLength(1)
   })
 
   it('quotes in the wrong place', async () => {
