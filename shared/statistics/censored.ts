@@ -33,7 +33,7 @@ export interface CensoredFit {
   n: number
   /** How many lie below their limit. */
   below: number
-  /** Maximum likelihood mean and standard deviation; null where they can't be given. */
+  /** Maximum likelihood mean and standard deviation (divisor n where nothing is below); null where they can't be given. */
   mean: number | null
   standardDeviation: number | null
   /** Of the logarithms, only on that scale. */
