@@ -101,9 +101,9 @@ async function claimIdentities(tx: BulkTransaction, { organisationId, id, sender
   if (unique.length === 0) return { fresh: [], repeated: 0, conflicts: [] as RefusedRecord[] }
   const inserted = await tx<{ id: string }[]>`
     insert into reading_identities (organisation_id, sender, sender_reading_id, reading_id, sampled_at, submission_id, content_digest)
-    select ${organisationId}, ${sender}, given.sender_reading_id, given.reading_id, given.sampled_at, ${id}, given.digest
+    select ${organisationId}, ${sender}, given.sender_reading_id, given.reading_id, given.sampled_at, ${id}, decode(given.digest, 'hex')
     from unnest(${unique.map(c => c.reading.id)}::text[], ${unique.map(c => c.readingId)}::uuid[], ${unique.map(c => c.sampledAt.toISOString())}::timestamptz[],
-      ${unique.map(c => c.contentDigest)}::bytea[]) as given(sender_reading_id, reading_id, sampled_at, digest)
+      ${unique.map(c => c.contentDigest.toString('hex'))}::text[]) as given(sender_reading_id, reading_id, sampled_at, digest)
     on conflict do nothing returning sender_reading_id as id`
   const mine = new Set(inserted.map(row => row.id))
   const fresh = unique.filter(candidate => mine.has(candidate.reading.id))

@@ -76,12 +76,14 @@ async function matchNamed(tx: BulkTransaction, organisationId: string, table: st
 async function matchVehicles(tx: BulkTransaction, organisationId: string, shopId: string, subjects: (VehicleSubject | null)[]): Promise<(MatchedSubject | null)[]> {
   const known = subjects.filter(subject => subject !== null)
   if (known.length === 0) return subjects.map(() => null)
-  let book = await VehicleBook.open(tx, organisationId, shopId, known)
-  if (!book.matchAll(known)) {
-    // Something is missing: take the lock under which this organisation's vehicles are made, look again, then make.
+  const book = new VehicleBook(organisationId, shopId)
+  await book.look(tx, known)
+  const missing = known.filter(subject => !book.has(subject))
+  if (missing.length > 0) {
+    // Take the lock under which this organisation's vehicles are made, look again for what was missing, then make it.
     await tx`select pg_advisory_xact_lock(hashtextextended(${`coldslip vehicles ${organisationId}`}, 0))`
-    book = await VehicleBook.open(tx, organisationId, shopId, known)
-    await book.makeMissing(tx, known)
+    await book.look(tx, missing)
+    await book.makeMissing(tx, missing.filter(subject => !book.has(subject)))
   }
   return subjects.map(subject => subject && book.find(subject))
 }
@@ -93,32 +95,34 @@ class VehicleBook {
   private byPlate = new Map<string, string[]>()
   private orders = new Map<string, { id: string, vehicleId: string }>()
 
-  private constructor(private organisationId: string, private shopId: string) {}
+  constructor(private organisationId: string, private shopId: string) {}
 
-  static async open(tx: BulkTransaction, organisationId: string, shopId: string, subjects: VehicleSubject[]): Promise<VehicleBook> {
-    const book = new VehicleBook(organisationId, shopId)
+  async look(tx: BulkTransaction, subjects: VehicleSubject[]): Promise<void> {
     const vins = [...new Set(subjects.flatMap(s => s.vin ? [s.vin] : []))]
     const plates = [...new Set(subjects.flatMap(s => s.plateKey ? [s.plateKey] : []))]
     const numbers = [...new Set(subjects.flatMap(s => s.workOrder ? [s.workOrder] : []))]
-    const [vehicles, orders] = await Promise.all([
-      tx<Vehicle[]>`
-        select id, vin, plate_key from vehicles where organisation_id = ${organisationId} and vin = any(${vins}::text[])
-        union
-        select id, vin, plate_key from vehicles where organisation_id = ${organisationId} and plate_key = any(${plates}::text[])`,
-      tx<{ id: string, number: string, vehicle_id: string }[]>`
-        select id, number, vehicle_id from work_orders
-        where organisation_id = ${organisationId} and shop_id = ${shopId} and number = any(${numbers}::text[])`,
+    const [byVin, byPlate, orders] = await Promise.all([
+      vins.length === 0 ? [] : tx<Vehicle[]>`
+        select v.id, v.vin, v.plate_key from unnest(${vins}::text[]) as wanted(vin)
+        join vehicles v on v.organisation_id = ${this.organisationId} and v.vin = wanted.vin`,
+      plates.length === 0 ? [] : tx<Vehicle[]>`
+        select v.id, v.vin, v.plate_key from unnest(${plates}::text[]) as wanted(plate_key)
+        join vehicles v on v.organisation_id = ${this.organisationId} and v.plate_key = wanted.plate_key`,
+      numbers.length === 0 ? [] : tx<{ id: string, number: string, vehicle_id: string }[]>`
+        select w.id, w.number, w.vehicle_id from unnest(${numbers}::text[]) as wanted(number)
+        join work_orders w on w.organisation_id = ${this.organisationId} and w.shop_id = ${this.shopId} and w.number = wanted.number`,
     ])
-    for (const vehicle of vehicles) book.add(vehicle)
-    for (const order of orders) book.orders.set(order.number, { id: order.id, vehicleId: order.vehicle_id })
-    return book
+    for (const vehicle of [...byVin, ...byPlate]) this.add(vehicle)
+    for (const order of orders) this.orders.set(order.number, { id: order.id, vehicleId: order.vehicle_id })
   }
 
   private add({ id, vin, plate_key: plateKey }: Vehicle): void {
     if (vin) this.byVin.set(vin, id)
     if (!plateKey) return
     if (!vin) this.byPlateAlone.set(plateKey, id)
-    this.byPlate.set(plateKey, [...this.byPlate.get(plateKey) ?? [], id])
+    const bearing = this.byPlate.get(plateKey)
+    if (!bearing) this.byPlate.set(plateKey, [id])
+    else if (!bearing.includes(id)) bearing.push(id)
   }
 
   private vehicleOf(subject: VehicleSubject): string | null {
@@ -134,14 +138,14 @@ class VehicleBook {
     return { subjectId: this.vehicleOf(subject)!, workOrderId: subject.workOrder ? this.orders.get(subject.workOrder)!.id : null }
   }
 
-  matchAll(subjects: VehicleSubject[]): boolean {
-    return subjects.every(subject => this.vehicleOf(subject) !== null && (!subject.workOrder || this.orders.has(subject.workOrder)))
+  has(subject: VehicleSubject): boolean {
+    return this.vehicleOf(subject) !== null && (!subject.workOrder || this.orders.has(subject.workOrder))
   }
 
   async makeMissing(tx: BulkTransaction, subjects: VehicleSubject[]): Promise<void> {
-    const vehicles: { organisation_id: string, id: string, vin: string | null, plate: string | null, plate_key: string | null, declared: string }[] = []
+    const vehicles: (VehicleSubject & { id: string })[] = []
     const adopted: { id: string, vin: string }[] = []
-    const orders: { organisation_id: string, id: string, shop_id: string, number: string, vehicle_id: string }[] = []
+    const orders: { id: string, number: string, vehicleId: string }[] = []
     for (const subject of subjects) {
       let vehicleId = this.vehicleOf(subject)
       const plateAlone = subject.vin && subject.plateKey ? this.byPlateAlone.get(subject.plateKey) : undefined
@@ -153,21 +157,31 @@ class VehicleBook {
       }
       if (vehicleId === null) {
         vehicleId = uuidV7(Date.now())
-        vehicles.push({ organisation_id: this.organisationId, id: vehicleId, vin: subject.vin, plate: subject.plate, plate_key: subject.plateKey, declared: subject.declared })
+        vehicles.push({ ...subject, id: vehicleId })
         this.add({ id: vehicleId, vin: subject.vin, plate_key: subject.plateKey })
       }
       if (subject.workOrder && !this.orders.has(subject.workOrder)) {
         const order = { id: uuidV7(Date.now()), vehicleId }
         this.orders.set(subject.workOrder, order)
-        orders.push({ organisation_id: this.organisationId, id: order.id, shop_id: this.shopId, number: subject.workOrder, vehicle_id: vehicleId })
+        orders.push({ ...order, number: subject.workOrder })
       }
     }
-    for (let at = 0; at < vehicles.length; at += 5000) await tx`insert into vehicles ${tx(vehicles.slice(at, at + 5000))}`
+    if (vehicles.length > 0) {
+      await tx`
+        insert into vehicles (organisation_id, id, vin, plate, plate_key, declared)
+        select ${this.organisationId}, * from unnest(${vehicles.map(v => v.id)}::uuid[], ${vehicles.map(v => v.vin)}::text[], ${vehicles.map(v => v.plate)}::text[],
+          ${vehicles.map(v => v.plateKey)}::text[], ${vehicles.map(v => v.declared)}::text[])`
+    }
     if (adopted.length > 0) {
       await tx`
         update vehicles set vin = given.vin from unnest(${adopted.map(a => a.id)}::uuid[], ${adopted.map(a => a.vin)}::text[]) as given(id, vin)
         where vehicles.organisation_id = ${this.organisationId} and vehicles.id = given.id`
     }
-    for (let at = 0; at < orders.length; at += 5000) await tx`insert into work_orders ${tx(orders.slice(at, at + 5000))}`
+    if (orders.length > 0) {
+      await tx`
+        insert into work_orders (organisation_id, id, shop_id, number, vehicle_id)
+        select ${this.organisationId}, given.id, ${this.shopId}, given.number, given.vehicle_id
+        from unnest(${orders.map(o => o.id)}::uuid[], ${orders.map(o => o.number)}::text[], ${orders.map(o => o.vehicleId)}::uuid[]) as given(id, number, vehicle_id)`
+    }
   }
 }
