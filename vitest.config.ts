@@ -8,7 +8,7 @@ export default defineConfig({
     projects: [
       { test: { name: 'unit', include: ['tests/unit/**/*.test.ts'] } },
       { test: { name: 'database', include: ['tests/database/**/*.test.ts'], testTimeout: 60_000, hookTimeout: 120_000 } },
-      { test: { name: 'http', include: ['tests/http/**/*.test.ts'], testTimeout: 60_000, hookTimeout: 180_000, fileParallelism: false } },
+      { test: { name: 'http', include: ['tests/{http,faults}/**/*.test.ts'], testTimeout: 60_000, hookTimeout: 180_000, fileParallelism: false } },
     ],
   },
 })

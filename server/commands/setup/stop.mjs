@@ -40,12 +40,22 @@ export async function stopAll(code, lastWord = () => {}) {
   process.exit(exitCode)
 }
 
+/** npm killed outright takes nothing down with it: then this process has another parent all at once. */
+function stopWithNpm(code) {
+  if (!process.env.npm_lifecycle_event) return
+  const npm = process.ppid
+  setInterval(() => {
+    if (process.ppid !== npm) void stopAll(code)
+  }, 1000).unref()
+}
+
 /**
  * Ctrl-C, a closed terminal and `kill` all end in an orderly stop; a second Ctrl-C does not wait.
  *
  * @param {number} codeOfSignal exit code of an orderly stop that a signal asked for
  */
 export function stopOnSignals(codeOfSignal) {
+  stopWithNpm(codeOfSignal)
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
     process.on(signal, () => {
       if (!isStopping()) {
