@@ -43,5 +43,5 @@ export async function checkServerPort(host, port) {
 /** True where only this machine can reach the address. */
 export function isLoopback(host) {
   const bare = host.replace(/^\[|\]$/g, '')
-  return bare === 'localhost' || bare === '::1' || /^127\./.test(bare)
+  return bare === 'localhost' || bare === '::1' || /^127(\.\d{1,3}){3}$/.test(bare)
 }
