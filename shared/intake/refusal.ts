@@ -22,6 +22,7 @@ export const REFUSALS = {
   'instrument': { scope: 'record', reason: 'The device token speaks for another instrument.', mend: 'Send the reading with the token of its own instrument.' },
   'pressure': { scope: 'record', reason: 'A pressure needs its kind, and a kind its pressure.', mend: 'Send pressureKilopascal together with pressureKind "gauge" or "absolute".' },
   'sum': { scope: 'record', reason: 'The percentages do not add up to 100.', mend: 'Check the percentages, the display resolution, and whether air is counted apart or within.' },
+  'nothing-found': { scope: 'record', reason: 'No refrigerant was found: every part is 0 or below detection.', mend: 'Sample again; a reading without refrigerant says nothing about purity.' },
   'duplicate-member': { scope: 'either', reason: 'The same member stands twice in one object.', mend: 'Send each member once.' },
   'too-deep': { scope: 'either', reason: 'Objects and lists are nested too deeply.', mend: 'Send the reading as the schema shows it.' },
   'syntax': { scope: 'either', reason: 'This is not valid JSON.', mend: 'Let a JSON library write the text.' },

@@ -1,10 +1,12 @@
 import type { z } from 'zod'
+import { checkSum } from '../composition/sum'
 import { DESIGNATIONS, SUBSTANCES, isSubstance } from '../refrigerants/designations'
 import { pointerTo, valueAt } from './json-pointer'
 import { nearestSubstances } from './nearest-substance'
 import { READING_SCHEMA, purityReading, type PurityReading, type RefinementParams } from './reading-schema'
 import { refuse, type Refusal } from './refusal'
 import { faultOfSamplingTime } from './sampling-time'
+import { refuseSum } from './sum-refusal'
 
 export type RecordCheck = { ok: true, reading: PurityReading } | { ok: false, refusals: Refusal[] }
 
@@ -17,7 +19,7 @@ const MOST_REFUSALS = 20
  */
 export function validateRecord(value: unknown): RecordCheck {
   const result = purityReading.safeParse(value)
-  if (result.success) return { ok: true, reading: result.data }
+  if (result.success) return checkComposition(result.data)
   const refusals = new Map<string, Refusal>()
   for (const issue of result.error.issues) {
     for (const refusal of refusalsOf(issue, value)) {
@@ -27,6 +29,18 @@ export function validateRecord(value: unknown): RecordCheck {
     }
   }
   return { ok: false, refusals: [...refusals.values()] }
+}
+
+function checkComposition(reading: PurityReading): RecordCheck {
+  const { composition } = reading
+  const refusal = refuseNothingFound(composition.parts) ?? refuseSum(checkSum(composition), composition.air)
+  return refusal === undefined ? { ok: true, reading } : { ok: false, refusals: [refusal] }
+}
+
+/** Without any refrigerant there is no air-free composition. */
+function refuseNothingFound(parts: PurityReading['composition']['parts']): Refusal | undefined {
+  if (parts.some(({ percent, qualifier }) => percent > 0 && qualifier === undefined)) return undefined
+  return refuse('nothing-found', { pointer: '/composition/parts' })
 }
 
 function refusalsOf(issue: z.core.$ZodIssue, record: unknown): Refusal[] {

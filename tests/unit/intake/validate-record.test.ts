@@ -42,6 +42,11 @@ describe('a reading that fits', () => {
     expect(validateRecord(reading(r => r.subject = subject)).ok).toBe(true)
   })
 
+  it('may add up to a little less or more than 100: that is flagged, not refused', () => {
+    expect(validateRecord(reading(r => r.composition.parts[0].percent = 98.5)).ok).toBe(true)
+    expect(validateRecord(reading(r => r.composition.parts[0].percent = 100)).ok).toBe(true)
+  })
+
   it.each([
     '2026-03-14T09:26:53Z', '2026-03-14T09:26:53.123456+05:45', '2024-02-29T00:00:00-12:00', '2026-12-31T23:59:59+14:00',
   ])('may be sampled at %s', (sampledAt) => {
@@ -68,6 +73,16 @@ describe('a reading that does not fit is refused at its place', () => {
       delete r.composition.airPercent
       r.composition.airQualifier = '<'
     }, { code: 'missing', pointer: '/composition/airPercent' }],
+    ['J16 parts that add up to 97', r => r.composition.parts[0].percent = 96.4, { code: 'sum', pointer: '/composition' }],
+    ['J16 parts that add up to 103', r => r.composition.parts[1].percent = 3.6, { code: 'sum', pointer: '/composition' }],
+    ['air counted apart that was counted within', r => r.composition.air = 'within', { code: 'sum', pointer: '/composition' }],
+    ['C22 fractions', r => r.composition.parts = [{ substance: 'R-134a', percent: 0.994 }, { substance: 'HC', percent: 0.006 }], { code: 'sum', pointer: '/composition' }],
+    ['nothing but air', (r) => {
+      r.composition.air = 'within'
+      r.composition.parts = [{ substance: 'R-134a', percent: 0 }]
+      r.composition.airPercent = 100
+    }, { code: 'nothing-found', pointer: '/composition/parts' }],
+    ['nothing above detection', r => r.composition.parts = [{ substance: 'R-134a', percent: 100, qualifier: '<' }], { code: 'nothing-found', pointer: '/composition/parts' }],
     ['no part', r => r.composition.parts = [], { code: 'length', pointer: '/composition/parts' }],
     ['a substance twice', r => r.composition.parts[1].substance = 'R-134a', { code: 'duplicate-substance', pointer: '/composition/parts/1/substance' }],
     ['a substance nobody knows', r => r.composition.parts[1].substance = 'R-9999', { code: 'unknown-substance', pointer: '/composition/parts/1/substance' }],
