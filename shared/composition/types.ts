@@ -59,7 +59,7 @@ export interface SumCheck {
   percent: number
   /** `percent` minus 100. */
   differencePercent: number
-  /** Allowed by rounding alone: half the resolution for each part that was counted. */
+  /** What the display explains: one step for each listed part and one for what it leaves out. */
   tolerancePercent: number
   outcome: 'agrees' | 'flagged' | 'refused'
 }

@@ -89,6 +89,8 @@ export interface RuleResult {
   limit: number | null
   /** Probability that the true value lies beyond the limit, 0 to 1; null where it can't be stated. */
   probabilityBeyond: number | null
+  /** True where the instrument saw nothing: `measured` is then its detection limit. */
+  belowDetection?: true
 }
 
 export interface Verdict {

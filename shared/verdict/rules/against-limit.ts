@@ -1,0 +1,61 @@
+import { COVERAGE_FACTOR } from '../../statistics/decision'
+import { normalCdf, normalUpper } from '../../statistics/normal'
+import type { Quantity } from '../sample'
+import type { DecisionRule, Limit, RuleName, RuleOutcome, RuleResult } from '../types'
+import type { Substance } from '../../refrigerants/designations'
+
+/** A value that differs from the limit by less than this lies on it: the arithmetic's own noise. */
+const ON_THE_LIMIT = 1e-9
+
+/**
+ * `minimum`: at or above is kept. `maximum`: at or below is kept. `action-level`: at or above calls for
+ * action, and doubt counts against (flammable, unknown, air).
+ */
+export type LimitSense = 'minimum' | 'maximum' | 'action-level'
+
+/** How far the value lies on the good side of the limit; negative beyond it. */
+function inside(value: number, limit: number, sense: LimitSense): number {
+  const difference = sense === 'minimum' ? value - limit : limit - value
+  return Math.abs(difference) < ON_THE_LIMIT ? 0 : difference
+}
+
+/**
+ * Simple or guarded decision with a guard band of guardFactor · U (JCGM 106:2012 8.3, ILAC-G8:09/2019
+ * clause 4). On an action level, reaching it is enough; a doubt remains only below it.
+ */
+function outcomeOf(value: number, u: number, limit: number, sense: LimitSense, decision: DecisionRule): RuleOutcome {
+  const room = inside(value, limit, sense)
+  const beyond = sense === 'action-level' ? room <= 0 : room < 0
+  if (decision.kind === 'simple') return beyond ? 'fail' : 'pass'
+  const guardBand = decision.guardFactor * COVERAGE_FACTOR * u
+  if (sense === 'action-level') return beyond ? 'fail' : room < guardBand - ON_THE_LIMIT ? 'unclear' : 'pass'
+  if (room >= guardBand - ON_THE_LIMIT) return 'pass'
+  return room < -guardBand ? 'fail' : 'unclear'
+}
+
+/** Probability of lying beyond the limit; a share can't be negative, so an upper limit's is cut at zero (JCGM 106:2012 clauses 6 and 7). */
+function probabilityBeyond(value: number, u: number, limit: number, sense: LimitSense): number | null {
+  if (u <= 0) return null
+  if (sense === 'minimum') return normalUpper((value - limit) / u)
+  return normalUpper((limit - value) / u) / normalCdf(value / u)
+}
+
+/**
+ * One quantity against one limit. What lies below a detection limit that itself keeps the limit passes;
+ * where the detection limit is too coarse for that, it is unclear.
+ */
+export function againstLimit(rule: RuleName, { percent, u, detectionLimit }: Quantity, limit: Limit, sense: LimitSense, decision: DecisionRule, substance?: Substance): RuleResult {
+  if (detectionLimit !== null) {
+    const kept = inside(detectionLimit, limit.value, sense) > 0 || (sense === 'maximum' && inside(detectionLimit, limit.value, sense) === 0)
+    return { rule, ...(substance ? { substance } : {}), outcome: kept ? 'pass' : 'unclear', measured: detectionLimit, uncertainty: null, limit: limit.value, probabilityBeyond: null, belowDetection: true }
+  }
+  return {
+    rule,
+    ...(substance ? { substance } : {}),
+    outcome: outcomeOf(percent, u, limit.value, sense, decision),
+    measured: percent,
+    uncertainty: COVERAGE_FACTOR * u,
+    limit: limit.value,
+    probabilityBeyond: probabilityBeyond(percent, u, limit.value, sense),
+  }
+}
