@@ -1,11 +1,11 @@
 import { ownPath } from '~/utils/own-path'
 
 /** Pages that need no account. */
-const PUBLIC = ['/sign-in', '/docs', '/properties', '/check']
+const PUBLIC = ['/docs', '/properties']
 
+/** Leads to the sign-in page and back; the server checks every request again by itself. */
 export default defineNuxtRouteMiddleware(async (to) => {
-  const isPublic = PUBLIC.some(path => to.path === path || to.path.startsWith(`${path}/`))
-  if (isPublic && to.path !== '/sign-in') return
+  if (PUBLIC.some(path => to.path === path || to.path.startsWith(`${path}/`))) return
   const { load } = useSession()
   const session = await load()
   if (to.path === '/sign-in') return session ? navigateTo(ownPath(to.query.next)) : undefined

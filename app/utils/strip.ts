@@ -1,6 +1,6 @@
 import type { ReadingDetail, ReadingRow } from '#shared/api/readings'
 import type { Designation, Substance } from '#shared/refrigerants/designations'
-import type { RuleOutcome } from '#shared/verdict/types'
+import type { RuleOutcome, RuleResult } from '#shared/verdict/types'
 import { figure } from './figures'
 import { substanceName } from './substance-look'
 
@@ -57,10 +57,9 @@ type Judged = Pick<ReadingDetail, 'declared' | 'purityPercent' | 'purityUncertai
 export function stripFromDetail(reading: Judged): Strip {
   const guard = reading.limitSet.decision === 'guarded' ? reading.limitSet.guardFactor : 0
   const lane = (substance: Substance | 'air', percent: number, belowDetection: boolean, highest: number): Lane => {
-    const rules = reading.rules.filter(rule => substance === 'air'
-      ? rule.rule === 'air-caution' || rule.rule === 'air-action'
-      : rule.substance === substance && (rule.rule === 'foreign' || rule.rule === 'flammable' || rule.rule === 'unknown'))
-    const measured = rules.find(rule => rule.measured !== null)
+    const rules = reading.rules.filter(rule => looksAt(rule, substance))
+    // Only air is judged on another basis than the composition holds; the lane follows the limit's.
+    const judged = substance === 'air' ? rules.find(rule => rule.measured !== null)?.measured : undefined
     const uncertainty = rules.find(rule => rule.uncertainty !== null)?.uncertainty ?? null
     const limits = rules.filter(rule => rule.limit !== null).map((rule): LaneLimit => ({
       at: rule.limit!,
@@ -69,7 +68,7 @@ export function stripFromDetail(reading: Judged): Strip {
     }))
     return {
       substance,
-      percent: belowDetection ? highest : measured?.measured ?? percent,
+      percent: belowDetection ? highest : judged ?? percent,
       uncertainty: belowDetection ? null : uncertainty,
       belowDetection,
       basis: substance === 'air' ? rules[0]?.words.unit ?? 'of the sample' : 'air-free',
@@ -91,6 +90,14 @@ export function stripFromDetail(reading: Judged): Strip {
     resolution: reading.resolution,
     lanes,
   }
+}
+
+/** Rules on a whole group name no substance; the group's own lane carries their limit. */
+function looksAt({ rule, substance }: RuleResult, lane: Substance | 'air'): boolean {
+  if (lane === 'air') return rule === 'air-caution' || rule === 'air-action'
+  if (rule === 'flammable') return substance ? substance === lane : lane === 'HC'
+  if (rule === 'unknown') return substance ? substance === lane : lane === 'OTHER'
+  return rule === 'foreign' && substance === lane
 }
 
 function limitWords(rule: string): string {
