@@ -69,7 +69,7 @@ describe('many readings', () => {
   })
 
   it('as CSV, with the place of a refused cell', async () => {
-    const csv = readingsToCsv([goodReading('csv-1'), goodReading('csv-2'), goodReading('csv-3')]).replace('csv-2,2026-03-14T09:26:53-05:00', 'csv-2,2026-02-30T09:26:53-05:00')
+    const csv = [...readingsToCsv(['csv-1', 'csv-2', 'csv-3'].map(id => ({ reading: goodReading(id) })))].join('').replace('csv-2,2026-03-14T09:26:53-05:00', 'csv-2,2026-02-30T09:26:53-05:00')
     const answer = await request(suite.server, '/api/v1/readings', { token: suite.a.token, body: csv, headers: { 'content-type': 'text/csv', 'prefer': 'wait=5' } })
     expect(answer.body.submission).toMatchObject({ accepted: 2, refused: 1 })
     expect(answer.body.refused[0]).toMatchObject({ line: 3, column: 'sampled_at', code: 'time' })

@@ -73,7 +73,7 @@ export async function migrate(root, dataFolder, owner, applicationPassword) {
   const env = { ...process.env, OWNER_DATABASE_URL: owner, APP_ROLE_PASSWORD: applicationPassword, MIGRATE_RESULT: resultFile }
   await step('Bringing the database up to date', async () => {
     const { code, output } = await run(process.execPath, ['--import', 'tsx', 'server/commands/migrate.ts'], { cwd: root, env })
-    if (code !== 0) throw new PlainError(`The database could not be brought up to date. ${tail(output, 6)}`)
+    if (code !== 0) throw new PlainError(`The database could not be brought up to date: ${tail(output, 6).replace(/^Migrate: /, '')}`)
   })
   const { databaseUrl } = JSON.parse(readFileSync(resultFile, 'utf8'))
   rmSync(resultFile)

@@ -1,5 +1,4 @@
 import { createHash } from 'node:crypto'
-import type { SumCheck } from '#shared/composition/types'
 import { canonicalReading } from '#shared/intake/canonical-reading'
 import { checkRecord, placeRefusal, senderIdOf } from '#shared/intake/check-record'
 import { flagsFor } from '#shared/intake/flags'
@@ -93,7 +92,6 @@ function examine(submission: OpenSubmission, record: RawRecord): Candidate | { r
   const wrong = wrongClock(sampledAt, submission) ?? wrongInstrument(reading.instrument.serial, submission)
   if (wrong) return { refusals: [placeRefusal(record, wrong)], senderReadingId: reading.id }
   const composition = normalise(reading)
-  if (composition.sum.outcome === 'refused') return { refusals: [placeRefusal(record, wrongSum(composition.sum))], senderReadingId: reading.id }
   return {
     ordinal: record.ordinal,
     line: record.line,
@@ -105,17 +103,6 @@ function examine(submission: OpenSubmission, record: RawRecord): Candidate | { r
     composition,
     flags: flagsFor({ reading, sum: composition.sum, receivedAt: submission.receivedAt }),
   }
-}
-
-/** Percentages of which no rounding makes a composition; fractions sent for percent are the commonest slip. */
-function wrongSum({ percent, tolerancePercent }: SumCheck): Refusal {
-  const sum = Number(percent.toFixed(3))
-  const looksLikeFractions = Math.abs(percent - 1) < 0.05
-  return refuse('sum', {
-    pointer: '/composition/parts',
-    reason: `The percentages add up to ${sum}, not 100; rounding explains ${Number(tolerancePercent.toFixed(3))}.${looksLikeFractions ? ' They look like fractions of 1.' : ''}`,
-    ...(looksLikeFractions ? { mend: 'Send percentages: 99.4, not 0.994.' } : {}),
-  })
 }
 
 function wrongClock(sampledAt: Date, submission: OpenSubmission): Refusal | null {
