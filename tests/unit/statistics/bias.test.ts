@@ -34,7 +34,9 @@ describe('drift', () => {
     const found = driftOf([0, 1, 2, 3, 4], [10, 10.11, 10.19, 10.31, 10.4], 0.95)
     expect(found.found).toBe('drift')
     expect(found.slope).toBeCloseTo(0.1, 12)
-    expect(found.interval.lower!).toBeGreaterThan(0)
+    expect((found.interval.lower! + found.interval.upper!) / 2).toBeCloseTo(0.1, 12)
+    expect(found.interval.lower!).toBeGreaterThan(0.09)
+    expect(found.interval.upper!).toBeGreaterThan(found.slope!)
     expect(driftOf([0, 1, 2, 3, 4], [10, 10.2, 9.9, 10.1, 10], 0.95).found).toBe('no drift shown')
   })
 

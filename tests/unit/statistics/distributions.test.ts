@@ -60,6 +60,12 @@ describe('distributions', () => {
     expect(tQuantile(0.5, 3)).toBe(0)
   })
 
+  it('keep the digits of a t quantile next to the centre', () => {
+    // Density of t with 4 at 0 is 3/8 and falls as 1 - 5/8 t²: t = d (1 + 5/24 d²) with d = 0.0001 / (3/8).
+    const d = 0.0001 / 0.375
+    expect(-tQuantile(0.4999, 4) / (d * (1 + 5 / 24 * d * d))).toBeCloseTo(1, 11)
+  })
+
   it('hold their edges and refuse what is outside', () => {
     expect(chiSquareCdf(0, 3)).toBe(0)
     expect(fUpper(0, 3, 4)).toBe(1)

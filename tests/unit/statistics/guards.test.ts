@@ -28,6 +28,7 @@ describe('guards of the statistics', () => {
     requireAllFinite([], 'a')
     requireOpenUnit(0.5, 'a')
     requireUnit(0, 'a')
+    requireUnit(1, 'a')
     requirePositive(1e-300, 'a')
     requireNotNegative(0, 'a')
     requireWhole(6, 'a', 2, 6)

@@ -17,6 +17,21 @@ describe('histogram', () => {
     }))
   })
 
+  it('takes the width of Freedman and Diaconis, or of Scott where the quartiles coincide', () => {
+    // Quartiles 16 and 48 of 0 to 64.
+    expect(histogram(Array.from({ length: 65 }, (_, i) => i)).binWidth).toBeCloseTo(64 / Math.cbrt(65), 12)
+    const piled = [...Array.from({ length: 25 }, () => 0), 3, 4]
+    const sd = Math.sqrt((25 - 49 / 27) / 26)
+    expect(histogram(piled).binWidth).toBeCloseTo(3.49 * sd / 3, 12)
+  })
+
+  it('reaches half a step over both ends when the step is known', () => {
+    const { bins } = histogram([0, 0.5, 1, 1.5, 2, 2, 2.5, 3], 0.5)
+    expect(bins[0]!.lower).toBe(-0.25)
+    expect(bins.at(-1)!.upper).toBeGreaterThanOrEqual(3.25)
+    expect(bins.at(-1)!.lower).toBeLessThan(3.25)
+  })
+
   it('lets no value fall on an edge when the step is known', () => {
     const values = [98.1, 98.2, 98.2, 98.3, 98.4, 98.4, 98.4, 98.5, 98.9]
     for (const { lower } of histogram(values, 0.1).bins) {

@@ -25,6 +25,7 @@ describe('share out of specification', () => {
   it('refuses wrong limits', () => {
     expect(() => requireLimits({})).toThrow('limits')
     expect(() => requireLimits({ lower: 2, upper: 1 })).toThrow('limits.lower')
+    expect(() => requireLimits({ lower: 2, upper: 2 })).toThrow('limits.lower')
     expect(() => requireLimits({ upper: NaN })).toThrow('limits.upper')
     expect(() => outOfSpecShare([1], { upper: 2 }, 0.95, [])).toThrow('same length')
   })

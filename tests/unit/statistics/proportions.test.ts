@@ -49,6 +49,8 @@ describe('two shares', () => {
     expect(found.interval.lower).toBeCloseTo(0.0524, 4)
     expect(found.interval.upper).toBeCloseTo(0.3339, 4)
     expect(found.z! ** 2).toBeCloseTo(7.0234, 4)
+    // Twice the normal tail beyond 2.65017.
+    expect(found.p).toBeCloseTo(0.008045, 6)
   })
 
   it('turn the sign when exchanged', () => {
@@ -63,7 +65,7 @@ describe('two shares', () => {
   })
 
   it('say when little can be told', () => {
-    expect(compareTwoShares({ x: 0, n: 10 }, { x: 0, n: 20 }, 0.95)).toMatchObject({ z: 0, p: 1, dependable: false })
+    expect(compareTwoShares({ x: 0, n: 10 }, { x: 0, n: 20 }, 0.95)).toMatchObject({ z: 0, p: 1, dependable: false, reason: 'none in either group' })
     expect(compareTwoShares({ x: 0, n: 0 }, { x: 1, n: 20 }, 0.95)).toMatchObject({ difference: null, p: null, reason: 'a group is empty' })
     expect(compareTwoShares({ x: 1, n: 10 }, { x: 2, n: 10 }, 0.95).dependable).toBe(false)
     expect(compareTwoShares({ x: 10, n: 40 }, { x: 20, n: 40 }, 0.95).dependable).toBe(true)

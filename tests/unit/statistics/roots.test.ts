@@ -8,6 +8,17 @@ describe('roots', () => {
     expect(findRoot(x => x, 0, 1)).toBe(0)
   })
 
+  it('take few steps on a smooth function', () => {
+    for (const [f, low, high] of [[(x: number) => Math.exp(x) - 5, -10, 10], [(x: number) => x ** 3 - 2, 0, 4]] as const) {
+      let calls = 0
+      findRoot((x) => {
+        calls += 1
+        return f(x)
+      }, low, high)
+      expect(calls).toBeLessThan(18)
+    }
+  })
+
   it('are searched outwards', () => {
     expect(findIncreasingRoot(x => x - 1000, 0, 1, 1e6)).toBeCloseTo(1000, 10)
     expect(findIncreasingRoot(x => x + 1000, 0, 1, 1e6)).toBeCloseTo(-1000, 10)

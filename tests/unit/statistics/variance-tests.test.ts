@@ -32,6 +32,11 @@ describe('tests of spread', () => {
     expect(brownForsythe([[1], [2, 3]]).reason).toContain('two values')
   })
 
+  it('take groups of two, not of one', () => {
+    expect(bartlett([[1, 2], [1, 4]]).statistic).toBeGreaterThan(0)
+    expect(bartlett([[1], [1, 4]]).reason).toContain('two values')
+  })
+
   it('judge a standard deviation against a given one', () => {
     const { statistic, df, pLower, pUpper, pTwoSided } = standardDeviationTest([1, 2, 3], 1)
     expect(statistic).toBeCloseTo(2, 14)
