@@ -1,18 +1,21 @@
-import type { UseFetchOptions } from 'nuxt/app'
+import type { AsyncData, NuxtError, UseFetchOptions } from 'nuxt/app'
+import type { Ref } from 'vue'
+
+interface ReadOptions {
+  /** One a thing that is read; with the id where there is one. */
+  key: string
+  query?: Ref<Record<string, string | string[]>>
+}
 
 /**
  * Reads from the API while the server draws the page and again in the browser. A session that has
  * ended leads to the sign-in page and back.
  */
-export function useRead<T>(path: string | (() => string), options: { key: string | (() => string), query?: UseFetchOptions<T>['query'], lazy?: boolean }) {
+export function useRead<T>(path: string, { key, query }: ReadOptions) {
   const lost = useSessionLost()
-  return useFetch<T>(path, {
-    key: options.key as string,
-    query: options.query,
-    lazy: options.lazy ?? false,
-    deep: false,
-    onResponseError: ({ response }) => lost(response.status),
-  } as UseFetchOptions<T>)
+  const options: UseFetchOptions<unknown> = { key, query, deep: false, onResponseError: ({ response }) => lost(response.status) }
+  // The path is not a literal, so the answer's type can't be looked up; the caller names it.
+  return useFetch<unknown>(path, options) as AsyncData<T | undefined, NuxtError | undefined>
 }
 
 /** Sends to the API from the browser. @throws the answer's error, to be shown by `problemOf`. */

@@ -6,7 +6,7 @@ const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i
 export const useShopsStore = defineStore('shops', () => {
   const chosen = useCookie<string | null>('coldslip-shop', {
     default: () => null,
-    decode: text => UUID.test(text) ? text : null,
+    decode: text => text && UUID.test(text) ? text : null,
     encode: id => id ?? '',
     maxAge: 60 * 60 * 24 * 365,
     sameSite: 'lax',
