@@ -1,6 +1,7 @@
 import { standardDeviationOf, summarise } from './describe'
 import { tQuantile } from './distributions'
-import { type Interval, interval, noInterval, requireAllFinite, requireNotNegative, requireOpenUnit, requireSameLength } from './guards'
+import { requireAllFinite, requireNotNegative, requireOpenUnit, requireSameLength } from './guards'
+import { type Interval, interval, noInterval } from './interval'
 import { meanInterval, oneSampleT } from './intervals'
 import { straightLine } from './regression'
 

@@ -1,6 +1,7 @@
 import { standardDeviationOf, summarise } from './describe'
 import { chiSquareQuantile } from './distributions'
-import { type Interval, interval, noInterval, requireFinite, requireNotNegative, requireOpenUnit, requirePositive, requireWhole } from './guards'
+import { requireFinite, requireNotNegative, requireOpenUnit, requirePositive, requireWhole } from './guards'
+import { type Interval, interval, noInterval } from './interval'
 import { movingRanges } from './individuals-chart'
 import { noncentralityFor } from './noncentral-t'
 import { normalCdf, normalQuantile } from './normal'

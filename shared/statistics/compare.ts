@@ -2,7 +2,8 @@ import { holm } from './adjust'
 import { summarise, type PartialSummary } from './describe'
 import { chiSquareUpper, tQuantile, tTwoSided } from './distributions'
 import { logGamma } from './gamma'
-import { type Interval, interval, noInterval, requireAllFinite, requireOpenUnit, requireWhole } from './guards'
+import { requireAllFinite, requireOpenUnit, requireWhole } from './guards'
+import { type Interval, interval, noInterval } from './interval'
 
 export interface Welch {
   /** Mean of the first minus mean of the second. */

@@ -1,5 +1,6 @@
 import { betaCdf } from './distributions'
-import { type Interval, interval, noInterval, requireOpenUnit, requireUnit, requireWhole } from './guards'
+import { requireOpenUnit, requireUnit, requireWhole } from './guards'
+import { type Interval, interval, noInterval } from './interval'
 
 /** P(R <= r) of a binomial count. */
 function binomialCdf(r: number, n: number, share: number): number {

@@ -47,16 +47,3 @@ export function requireWhole(value: number, name: string, least: number, most = 
 export function requireSameLength(a: readonly unknown[], aName: string, b: readonly unknown[], bName: string): void {
   if (a.length !== b.length) throw new RangeError(`${aName} and ${bName} must have the same length, not ${a.length} and ${b.length}`)
 }
-
-/** An interval, or the plain reason why there is none. */
-export type Interval =
-  | { lower: number, upper: number, reason: null }
-  | { lower: null, upper: null, reason: string }
-
-export function interval(lower: number, upper: number): Interval {
-  return { lower, upper, reason: null }
-}
-
-export function noInterval(reason: string): Interval {
-  return { lower: null, upper: null, reason }
-}

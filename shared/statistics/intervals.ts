@@ -1,5 +1,6 @@
 import { chiSquareQuantile, tQuantile, tTwoSided } from './distributions'
-import { type Interval, interval, noInterval, requireFinite, requireNotNegative, requireOpenUnit, requireWhole } from './guards'
+import { requireFinite, requireNotNegative, requireOpenUnit, requireWhole } from './guards'
+import { type Interval, interval, noInterval } from './interval'
 
 /** n, mean and sample standard deviation of a batch, in one unit. */
 export interface MeanAndSpread {

@@ -1,4 +1,5 @@
-import { requireAllFinite, requireFinite, requireOpenUnit, requireSameLength, type Interval } from './guards'
+import { requireAllFinite, requireFinite, requireOpenUnit, requireSameLength } from './guards'
+import { type Interval } from './interval'
 import { wilsonInterval } from './proportions'
 
 /** Limits in the units of the values; either or both. */

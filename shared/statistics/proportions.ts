@@ -1,5 +1,6 @@
 import { betaQuantile } from './distributions'
-import { type Interval, interval, noInterval, requireOpenUnit, requireWhole } from './guards'
+import { requireOpenUnit, requireWhole } from './guards'
+import { type Interval, interval, noInterval } from './interval'
 import { normalCdf, normalQuantile } from './normal'
 
 function requireCount(x: number, n: number, xName = 'x', nName = 'n'): void {

@@ -1,5 +1,6 @@
 import { chiSquareQuantile, chiSquareUpper } from './distributions'
-import { type Interval, interval, noInterval, requireAllFinite, requireOpenUnit, requireWhole } from './guards'
+import { requireAllFinite, requireOpenUnit, requireWhole } from './guards'
+import { type Interval, interval, noInterval } from './interval'
 import { type MeanAndSpread, requireMeanAndSpread } from './intervals'
 import { noncentralTQuantile } from './noncentral-t'
 import { normalCdf, normalDensity, normalQuantile } from './normal'

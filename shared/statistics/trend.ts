@@ -1,6 +1,7 @@
 import { lag1Autocorrelation } from './describe'
 import { normalCdf, normalQuantile } from './normal'
-import { type Interval, interval, noInterval, requireAllFinite, requireOpenUnit, requireSameLength, requireWhole } from './guards'
+import { requireAllFinite, requireOpenUnit, requireSameLength, requireWhole } from './guards'
+import { type Interval, interval, noInterval } from './interval'
 import { median } from './quantiles'
 
 /** Below this number of values no trend is judged (common practice, no source). */
