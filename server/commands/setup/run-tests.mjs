@@ -1,4 +1,4 @@
-import { cpSync, existsSync, mkdtempSync, realpathSync, rmSync } from 'node:fs'
+import { cpSync, existsSync, mkdirSync, mkdtempSync, realpathSync, rmSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
@@ -52,6 +52,9 @@ async function prepare(root, parts, folder) {
   const env = { ...npmEnvironment(), NUXT_TELEMETRY_DISABLED: '1' }
   // Whatever this machine serves must not be touched by a test.
   for (const name of Object.keys(env)) if (/^(DATABASE_URL|OWNER_DATABASE_URL|COLDSLIP_.*|HOST|PORT|PG[A-Z]+)$/.test(name)) delete env[name]
+  // What a test that was cut off leaves behind goes with the run's own folder.
+  env.TMPDIR = join(folder, 'tmp')
+  mkdirSync(env.TMPDIR)
   if (parts.includes('browser')) await ensureChromium()
   const needsDatabase = parts.some(part => NEEDS_DATABASE.includes(part))
   const postgres = needsDatabase ? await ensurePostgres() : null
