@@ -1,6 +1,7 @@
 import type { ReadingDetail, ReadingRow } from '#shared/api/readings'
 import type { Designation, Substance } from '#shared/refrigerants/designations'
-import type { RuleOutcome, RuleResult } from '#shared/verdict/types'
+import { belongsTo, isFlammable } from '#shared/verdict/flammable-substances'
+import type { RuleName, RuleOutcome, RuleResult } from '#shared/verdict/types'
 import { figure } from './figures'
 import { substanceName } from './substance-look'
 
@@ -8,8 +9,8 @@ import { substanceName } from './substance-look'
 export interface LaneLimit {
   at: number
   words: string
-  /** Where the guard band in front of the limit begins; null where the rule has none. */
-  guardFrom: number | null
+  /** The guard band, in which the matter is too close to call; null where the rule has none. */
+  guard: { from: number, to: number } | null
 }
 
 /** One contaminant in the lens. Numbers in percent. */
@@ -19,7 +20,7 @@ export interface Lane {
   /** Expanded uncertainty (k = 2); null where it is not known. */
   uncertainty: number | null
   belowDetection: boolean
-  /** `of the sample` for air, `air-free` for the rest. */
+  /** What the percentage is a share of, in words. */
   basis: string
   limits: LaneLimit[]
   outcome: RuleOutcome | null
@@ -41,10 +42,10 @@ const OUTCOME_ORDER: readonly RuleOutcome[] = ['fail', 'unclear', 'absent', 'war
 /** From a row of the results browser: no limits, no uncertainties of the parts. */
 export function stripFromRow(row: Pick<ReadingRow, 'declared' | 'purityPercent' | 'purityUncertainty' | 'resolution' | 'contaminants' | 'airPercent'>): Strip {
   const lanes: Lane[] = row.contaminants.map(part => ({
-    substance: part.substance, percent: part.percent, uncertainty: null, belowDetection: false, basis: 'air-free', limits: [], outcome: null,
+    substance: part.substance, percent: part.percent, uncertainty: null, belowDetection: false, basis: 'percent by mass, air-free', limits: [], outcome: null,
   }))
   if (row.airPercent !== null) {
-    lanes.push({ substance: 'air', percent: row.airPercent, uncertainty: null, belowDetection: false, basis: 'of the sample', limits: [], outcome: null })
+    lanes.push({ substance: 'air', percent: row.airPercent, uncertainty: null, belowDetection: false, basis: 'percent by mass of the sample', limits: [], outcome: null })
   }
   return {
     declared: row.declared, purityPercent: row.purityPercent, purityUncertainty: row.purityUncertainty, purityMinimum: null, resolution: row.resolution, lanes,
@@ -55,29 +56,28 @@ type Judged = Pick<ReadingDetail, 'declared' | 'purityPercent' | 'purityUncertai
 
 /** From a whole reading: each lane with the limits, guard bands and uncertainties of the rules that looked at it. */
 export function stripFromDetail(reading: Judged): Strip {
-  const guard = reading.limitSet.decision === 'guarded' ? reading.limitSet.guardFactor : 0
+  const { guardFactor } = reading.limitSet
   const lane = (substance: Substance | 'air', percent: number, belowDetection: boolean, highest: number): Lane => {
     const rules = reading.rules.filter(rule => looksAt(rule, substance))
     // Only air is judged on another basis than the composition holds; the lane follows the limit's.
     const judged = substance === 'air' ? rules.find(rule => rule.measured !== null)?.measured : undefined
-    const uncertainty = rules.find(rule => rule.uncertainty !== null)?.uncertainty ?? null
     const limits = rules.filter(rule => rule.limit !== null).map((rule): LaneLimit => ({
       at: rule.limit!,
-      words: limitWords(rule.rule),
-      guardFrom: guard > 0 && rule.uncertainty !== null ? Math.max(0, rule.limit! - guard * rule.uncertainty) : null,
+      words: LIMIT_WORDS[rule.rule] ?? rule.rule,
+      guard: guardBand(rule, guardFactor),
     }))
     return {
       substance,
       percent: belowDetection ? highest : judged ?? percent,
-      uncertainty: belowDetection ? null : uncertainty,
+      uncertainty: belowDetection ? null : rules.find(rule => rule.uncertainty !== null)?.uncertainty ?? null,
       belowDetection,
-      basis: substance === 'air' ? rules[0]?.words.unit ?? 'of the sample' : 'air-free',
+      basis: substance === 'air' ? rules[0]?.words.unit ?? 'percent by mass of the sample' : 'percent by mass, air-free',
       limits: limits.length > 0 ? distinct(limits) : standingLimits(substance, reading.marks),
       outcome: rules.map(rule => rule.outcome).sort((a, b) => OUTCOME_ORDER.indexOf(a) - OUTCOME_ORDER.indexOf(b))[0] ?? null,
     }
   }
   const lanes = reading.composition.parts
-    .filter(part => part.substance !== reading.declared && (part.massFraction > 0 || part.belowDetection))
+    .filter(part => !belongsTo(reading.declared, part.substance) && (part.massFraction > 0 || part.belowDetection))
     .map(part => lane(part.substance, part.massFraction * 100, part.belowDetection, part.massFractionHigh * 100))
     .sort((a, b) => Number(a.belowDetection) - Number(b.belowDetection) || b.percent - a.percent)
   const air = reading.composition.air
@@ -92,23 +92,28 @@ export function stripFromDetail(reading: Judged): Strip {
   }
 }
 
-/** Rules on a whole group name no substance; the group's own lane carries their limit. */
+/** Rules on a whole group name no substance; their limit stands on the lane of each member, which alone may not pass it either. */
 function looksAt({ rule, substance }: RuleResult, lane: Substance | 'air'): boolean {
   if (lane === 'air') return rule === 'air-caution' || rule === 'air-action'
-  if (rule === 'flammable') return substance ? substance === lane : lane === 'HC'
+  if (rule === 'flammable') return substance ? substance === lane : isFlammable(lane)
   if (rule === 'unknown') return substance ? substance === lane : lane === 'OTHER'
   return rule === 'foreign' && substance === lane
 }
 
-function limitWords(rule: string): string {
-  return ({ 'foreign': 'foreign', 'flammable': 'flammable', 'unknown': 'unknown', 'air-caution': 'caution', 'air-action': 'action' } as Record<string, string>)[rule] ?? rule
+const LIMIT_WORDS: Partial<Record<RuleName, string>> = { 'foreign': 'foreign', 'flammable': 'flammable', 'unknown': 'unknown', 'air-caution': 'caution', 'air-action': 'action' }
+
+/** As the rules hold it: on both sides of a limit of foreign refrigerant, below the levels that call for action; air has none. */
+function guardBand({ rule, limit, uncertainty }: RuleResult, guardFactor: number): LaneLimit['guard'] {
+  if (limit === null || uncertainty === null || guardFactor === 0 || rule === 'air-caution' || rule === 'air-action') return null
+  const width = guardFactor * uncertainty
+  return { from: Math.max(0, limit - width), to: rule === 'foreign' ? limit + width : limit }
 }
 
 function standingLimits(substance: Substance | 'air', marks: ReadingDetail['marks']): LaneLimit[] {
-  const at = (value: number, words: string): LaneLimit => ({ at: value, words, guardFrom: null })
+  const at = (value: number, words: string): LaneLimit => ({ at: value, words, guard: null })
   if (substance === 'air') return [at(marks.airCaution, 'caution'), at(marks.airAction, 'action')]
-  if (substance === 'HC') return [at(marks.flammableMaximum, 'flammable')]
   if (substance === 'OTHER') return [at(marks.unknownMaximum, 'unknown')]
+  if (substance === 'HC') return [at(marks.flammableMaximum, 'flammable')]
   return [at(marks.foreignMaximum, 'foreign')]
 }
 
@@ -117,10 +122,14 @@ function distinct(limits: LaneLimit[]): LaneLimit[] {
   const byPlace = new Map<number, LaneLimit>()
   for (const limit of limits) {
     const known = byPlace.get(limit.at)
-    const guardFrom = known?.guardFrom === undefined || known.guardFrom === null ? limit.guardFrom : Math.min(known.guardFrom, limit.guardFrom ?? known.guardFrom)
-    byPlace.set(limit.at, known ? { ...known, words: `${known.words}, ${limit.words}`, guardFrom } : limit)
+    byPlace.set(limit.at, known ? { at: limit.at, words: `${known.words}, ${limit.words}`, guard: union(known.guard, limit.guard) } : limit)
   }
   return [...byPlace.values()].sort((a, b) => a.at - b.at)
+}
+
+function union(one: LaneLimit['guard'], other: LaneLimit['guard']): LaneLimit['guard'] {
+  if (!one || !other) return one ?? other
+  return { from: Math.min(one.from, other.from), to: Math.max(one.to, other.to) }
 }
 
 const SCALES = [5, 10, 20, 50, 100] as const

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { byteText, countText, decimalsOf, figure, limitFigure, padToPoint, probabilityText, uncertaintyFigure } from '../../../app/utils/figures'
+import { byteText, countText, figure, limitFigure, padToPoint } from '../../../app/utils/figures'
 
 describe('figure', () => {
   it('keeps the significant figures of the instrument', () => {
@@ -15,30 +15,15 @@ describe('figure', () => {
   })
 })
 
-it('reads the decimals of a display step', () => {
-  expect([1, 0.5, 0.1, 0.05, 0.01, 10, 0.001].map(decimalsOf)).toEqual([0, 1, 1, 2, 2, 0, 3])
-})
-
 it('shows a limit with no fewer decimals than it was set with', () => {
   expect(limitFigure(98, 1)).toBe('98.0')
   expect(limitFigure(0.05, 0.1)).toBe('0.05')
-})
-
-it('keeps one decimal of the uncertainty of a coarse instrument', () => {
-  expect(uncertaintyFigure(0.58, 1)).toBe('0.6')
-  expect(uncertaintyFigure(0.123, 0.01)).toBe('0.12')
 })
 
 it('brings decimal points under one another', () => {
   const texts = ['100', '98.4', '0.05'].map(text => padToPoint(text, 2))
   expect(texts).toEqual(['100   ', '98.4 ', '0.05'])
   expect(padToPoint('98', 0)).toBe('98')
-})
-
-it('never claims certainty', () => {
-  expect(probabilityText(0)).toBe('< 0.1')
-  expect(probabilityText(1)).toBe('> 99.9')
-  expect(probabilityText(0.314)).toBe('31.4')
 })
 
 it('groups counts and names sizes', () => {

@@ -20,7 +20,7 @@ const reading = {
     rule('air-action', { measured: 2.1, uncertainty: 0.2, limit: 3 }),
   ],
   marks: { purityMinimum: 98, foreignMaximum: 2, flammableMaximum: 0.5, unknownMaximum: 1, airCaution: 1.5, airAction: 3 },
-  limitSet: { decision: 'guarded', guardFactor: 0.5 },
+  limitSet: { guardFactor: 0.5 },
 } as unknown as ReadingDetail
 
 describe('stripFromDetail', () => {
@@ -31,17 +31,27 @@ describe('stripFromDetail', () => {
   })
 
   it('gives the group its limit from the rule on the whole, with the guard band in front', () => {
-    expect(strip.lanes[0]).toMatchObject({ percent: 1.5, uncertainty: 0.3, outcome: 'fail', limits: [{ at: 0.5, guardFrom: 0.35 }] })
+    expect(strip.lanes[0]).toMatchObject({ percent: 1.5, uncertainty: 0.3, outcome: 'fail', limits: [{ at: 0.5, guard: { from: 0.35, to: 0.5 } }] })
+  })
+
+  it('draws the band of foreign refrigerant on both sides, and none for air', () => {
+    expect(strip.lanes[1]!.limits).toEqual([{ at: 2, words: 'foreign', guard: { from: 1.8, to: 2.2 } }])
+    expect(strip.lanes[3]!.limits.every(limit => limit.guard === null)).toBe(true)
+  })
+
+  it('counts the components of a declared blend as the blend', () => {
+    const blend = stripFromDetail({ ...reading, declared: 'R-410A', rules: [], composition: { ...reading.composition, parts: [part('R-32', 50), part('R-125', 49), part('R-22', 1)] } } as unknown as ReadingDetail)
+    expect(blend.lanes.map(lane => lane.substance)).toEqual(['R-22', 'air'])
   })
 
   it('begins a guard band wider than the limit at zero', () => {
     const wide = stripFromDetail({ ...reading, limitSet: { ...reading.limitSet, guardFactor: 2 } })
-    expect(wide.lanes[0]!.limits[0]!.guardFrom).toBe(0)
+    expect(wide.lanes[0]!.limits[0]!.guard!.from).toBe(0)
   })
 
   it('draws no guard band under simple acceptance', () => {
-    const simple = stripFromDetail({ ...reading, limitSet: { ...reading.limitSet, decision: 'simple' } })
-    expect(simple.lanes.flatMap(lane => lane.limits).every(limit => limit.guardFrom === null)).toBe(true)
+    const simple = stripFromDetail({ ...reading, limitSet: { ...reading.limitSet, guardFactor: 0 } })
+    expect(simple.lanes.flatMap(lane => lane.limits).every(limit => limit.guard === null)).toBe(true)
   })
 
   it('shows the detection limit of what was not found, without a whisker', () => {
@@ -54,7 +64,7 @@ describe('stripFromDetail', () => {
 })
 
 describe('lensEnd', () => {
-  const lane = (percent: number, uncertainty: number | null, limit: number) => ({ percent, uncertainty, limits: [{ at: limit, words: '', guardFrom: null }] }) as unknown as Lane
+  const lane = (percent: number, uncertainty: number | null, limit: number) => ({ percent, uncertainty, limits: [{ at: limit, words: '', guard: null }] }) as unknown as Lane
 
   it('is 5 % at first and wider when a value, a whisker or a limit needs it', () => {
     expect(lensEnd([])).toBe(5)
