@@ -13,7 +13,7 @@ import { run, tail } from './run.mjs'
  * @param {string} options.baseUrl
  * @param {NodeJS.ProcessEnv} options.env of the server
  * @param {string} options.owner
- * @param {boolean} options.databaseIsNew then an old demo.json belongs to a database that is gone
+ * @param {boolean} options.databaseIsNew or not known to be ours: then demo.json may belong to another database
  */
 export async function ensureDemo({ root, demoFile, baseUrl, env, owner, databaseIsNew }) {
   if (databaseIsNew || !existsSync(demoFile)) {

@@ -42,7 +42,7 @@ async function bringUp() {
     DATABASE_URL: database.application ?? migrated,
     NUXT_SESSION_PASSWORD: process.env.NUXT_SESSION_PASSWORD || secrets.sessionPassword,
   }
-  const demo = await demoFor({ root, dataFolder, baseUrl, host, env, owner, named, databaseIsNew: database.isNew ?? false })
+  const demo = await demoFor({ root, dataFolder, baseUrl, host, env, owner, named, databaseIsNew: database.isNew ?? true })
   const server = startServerProcess(root, { ...env, ...(demo ? { COLDSLIP_DEMO: '1', COLDSLIP_DEMO_FILE: join(dataFolder, 'demo.json') } : { COLDSLIP_DEMO: '0' }) })
   onStop(() => server.stop(), () => server.kill())
   await server.waitUntilReady(baseUrl)
