@@ -17,7 +17,7 @@ export function useReadingList(filters: () => ReadingFilters, isReading: () => b
     const next = { ...filtersToQuery(filters()), limit: String(PAGE) }
     return before && JSON.stringify(before) === JSON.stringify(next) ? before : next
   })
-  const { data: first, status, error, refresh } = useRead<ReadingList>('/api/readings', { key: 'readings', query })
+  const { data: first, status, error, refresh } = useRead<ReadingList>('/api/v1/readings', { key: 'readings', query })
 
   /** What older pages and news have added to the first page; falls away when another first page comes. */
   const grown = shallowRef<{ first: ReadingList, rows: ReadingRow[], cursor: string | null } | null>(null)
@@ -46,7 +46,7 @@ export function useReadingList(filters: () => ReadingFilters, isReading: () => b
     olderError.value = null
     const asked = query.value
     try {
-      const list = await send<ReadingList>('/api/readings', { query: { ...asked, cursor: cursor.value } })
+      const list = await send<ReadingList>('/api/v1/readings', { query: { ...asked, cursor: cursor.value } })
       if (asked !== query.value) return
       const known = new Set(rows.value.map(row => row.id))
       grow([...rows.value, ...list.readings.filter(row => !known.has(row.id))], list.nextCursor)
@@ -67,7 +67,7 @@ export function useReadingList(filters: () => ReadingFilters, isReading: () => b
 
   useLive(async () => {
     const asked = query.value
-    const list = await send<ReadingList>('/api/readings', { query: asked })
+    const list = await send<ReadingList>('/api/v1/readings', { query: asked })
     if (asked !== query.value) return
     const known = new Set(rows.value.map(row => row.id))
     const added = list.readings.filter(row => !known.has(row.id)).length
