@@ -74,6 +74,10 @@ describe('the demo scenario', () => {
     expect(new Set(organisation.readings.map(({ reading }) => reading.id)).size).toBe(organisation.readings.length)
   })
 
+  it('keeps a gap whose moment falls between two samples close together', () => {
+    expect(demoScenario({ seed: 121, now: new Date('2025-09-17T18:28:48Z') }).stories.sequenceGaps).toHaveLength(3)
+  })
+
   it('is mostly clean', () => {
     const vehicles = organisation.readings.filter(({ reading }) => reading.subject.kind === 'vehicle')
     const clean = vehicles.filter(({ reading }) => declaredPercent(reading.composition, reading.declared) >= 98.4)
