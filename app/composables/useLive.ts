@@ -1,7 +1,7 @@
 import type { createLiveStream } from '~/utils/live-stream'
 
 /** A burst of news is one refresh: the first after this wait takes everything in. */
-const GATHER_MILLISECONDS = 700
+const GATHER_MILLISECONDS = 250
 
 /** Calls `refresh` when readings have come in, while the component is on the page. One call at a time. */
 export function useLive(refresh: () => Promise<unknown>) {

@@ -23,12 +23,19 @@ export function useSession() {
     return session.value
   }
 
+  /** After signing in. */
+  function adopt(view: SessionView) {
+    session.value = view
+    asked.value = true
+  }
+
+  /** After signing out, or when the server says that the session has ended. */
   function forget() {
     session.value = null
-    asked.value = false
+    asked.value = true
   }
 
   const mayI = (right: Right) => session.value !== null && can(session.value.roles, right)
 
-  return { session, load, forget, mayI }
+  return { session, load, adopt, forget, mayI }
 }
