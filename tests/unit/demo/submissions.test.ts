@@ -34,7 +34,7 @@ async function takeIn({ mediaType, bytes }: DemoSubmission): Promise<Outcome> {
 
 const at = (time: Date, media: DemoSubmission['mediaType']) => submissions.find(({ receivedAt, mediaType }) => receivedAt.getTime() === time.getTime() && mediaType === media)!
 
-describe('the submissions of the demo', () => {
+describe('the submissions of the demo', { timeout: 30_000 }, () => {
   it('are few, in order of receipt, and never received before they were sampled or after now', () => {
     expect(submissions.length).toBeLessThan(1_500)
     expect(new Set(submissions.map(({ source }) => source))).toEqual(new Set(['device', 'file', 'hand']))
