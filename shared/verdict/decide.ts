@@ -1,5 +1,6 @@
 import { combineSamples } from './repeats'
 import { RULE_VERSION } from './rule-version'
+import { toMillionth } from './rules/against-limit'
 import { judgeAir } from './rules/air'
 import { judgeDeclared } from './rules/declared'
 import { judgeFlammable } from './rules/flammable'
@@ -83,7 +84,7 @@ export function decideVerdict(input: VerdictInput): Verdict {
     limitSetVersion: set.version,
     rule: RULE_VERSION,
     attempt: samples.length,
-    purityPercent: sample.purity.percent,
+    purityPercent: toMillionth(sample.purity.percent),
   }
 }
 

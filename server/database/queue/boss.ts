@@ -38,10 +38,13 @@ export async function stopBoss(): Promise<void> {
 /**
  * Queues intake jobs in the caller's transaction, so that bytes and job commit together, and wakes the
  * workers when it commits. The queue answers nothing here: that every queue exists is asked at readiness.
+ *
+ * The first job of a submission bears the submission's id, so that the sweeper can find it by key; a
+ * later one gets an id of its own.
  */
-export function enqueueIntake(tx: BulkTransaction, payloads: IntakePayload[]): Promise<unknown>[] {
+export function enqueueIntake(tx: BulkTransaction, payloads: IntakePayload[], which: 'first' | 'again'): Promise<unknown>[] {
   if (!boss) throw new Error('The queue is not started')
-  const jobs = payloads.map(payload => ({ name: 'intake', data: QUEUES.intake.payload.parse(payload) }))
+  const jobs = payloads.map(payload => ({ name: 'intake', ...(which === 'first' ? { id: payload.submissionId } : {}), data: QUEUES.intake.payload.parse(payload) }))
   const inserted = boss.insert(jobs, {
     db: {
       // The queue hands its first parameter over as JSON text; the plain client would encode it again.

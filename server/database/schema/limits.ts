@@ -1,4 +1,4 @@
-import { integer, jsonb, pgTable, primaryKey, text, uuid } from 'drizzle-orm/pg-core'
+import { integer, jsonb, pgTable, primaryKey, uuid } from 'drizzle-orm/pg-core'
 import { instant, organisationId } from './columns'
 import type { LimitSet } from '#shared/verdict/types'
 

@@ -24,7 +24,7 @@ export async function retrySubmission({ organisationId, submissionId, actor }: {
       update submissions set status = 'received', processed_at = null, failure = null, lease_until = null
       where organisation_id = ${organisationId} and id = ${submissionId} and status = 'failed' and failure->>'code' = 'fault' returning id`
     if (changed.length === 0) return false
-    await Promise.all(enqueueIntake(tx, [{ organisationId, submissionId }]))
+    await Promise.all(enqueueIntake(tx, [{ organisationId, submissionId }], 'again'))
     await appendAuditEvent(tx, { organisationId, at: new Date(), actor, action: 'submission.retried', entityKind: 'submission', entityId: submissionId, detail: {} })
     return true
   })

@@ -1,5 +1,6 @@
 import { createHash } from 'node:crypto'
 import { merkleRoot } from '#shared/audit/merkle'
+import { compositionJson } from '#shared/composition/composition-json'
 import type { Flag } from '#shared/intake/kinds'
 import { refuse, type Refusal } from '#shared/intake/refusal'
 import type { Verdict } from '#shared/verdict/types'
@@ -9,7 +10,7 @@ import { NEWS_CHANNEL } from '../../database/queue/definitions'
 import { appendAuditEvent, lockAuditHead } from '../audit/append-event'
 import { Fenced } from './ingest.errors'
 import { copyReadings, type CopyValue } from './copy-readings'
-import { contaminantsOf, earlierInVisit, judge, recordDigest, type Candidate, type VisitSample } from './judge'
+import { contaminantsOf, earlierInVisit, judge, recordDigest, recordTexts, type Candidate, type RecordTexts, type VisitSample } from './judge'
 import { matchSubjects, type MatchedSubject } from './match-subjects'
 import { instrumentsBySerial, limitSetVersions, limitsInForce, type InstrumentRecord } from './organisation-context'
 import { addToRollups, type RollupEntry } from './rollups'
@@ -38,6 +39,7 @@ interface Placed extends Candidate {
   instrument: InstrumentRecord
   verdict: Verdict
   flags: Flag[]
+  texts: RecordTexts
   digest: Buffer
 }
 
@@ -110,8 +112,8 @@ async function claimIdentities(tx: BulkTransaction, { organisationId, id, sender
   const doubtful = [...unique.filter(candidate => !mine.has(candidate.reading.id)), ...later]
   if (doubtful.length === 0) return { fresh, repeated: 0, conflicts: [] as RefusedRecord[] }
   const held = await tx<{ sender_reading_id: string, reading_id: string, content_digest: Uint8Array }[]>`
-    select sender_reading_id, reading_id, content_digest from reading_identities
-    where organisation_id = ${organisationId} and sender = ${sender} and sender_reading_id = any(${doubtful.map(c => c.reading.id)}::text[])`
+    select i.sender_reading_id, i.reading_id, i.content_digest from unnest(${doubtful.map(c => c.reading.id)}::text[]) as wanted(id)
+    join reading_identities i on i.organisation_id = ${organisationId} and i.sender = ${sender} and i.sender_reading_id = wanted.id`
   const holders = new Map(held.map(row => [row.sender_reading_id, row]))
   const conflicts: RefusedRecord[] = []
   for (const candidate of doubtful) {
@@ -149,11 +151,12 @@ async function placeAndJudge(tx: BulkTransaction, submission: OpenSubmission, fr
     const samples = reading.subject.kind === 'check' ? undefined : visits.get(subject.subjectId)
     const earlier = samples ? earlierInVisit(samples, at, reading.declared, subject.workOrderId) : []
     const { verdict, flags } = judge(candidate, instrument, limitsInForce(versions, candidate.sampledAt), earlier)
+    const texts = recordTexts({ reported: reading.composition, verdict })
     const digest = recordDigest({
       readingId: candidate.readingId, contentDigest: candidate.contentDigest, submissionId: submission.id, ordinal: candidate.ordinal, revision: 1,
       sampledAt: candidate.sampledAt, shopId, subjectId: subject.subjectId, instrumentId: instrument.id, declared: reading.declared, reported: reading.composition, verdict,
-    })
-    placed[i] = { ...candidate, subject, instrument, verdict, flags, digest }
+    }, texts)
+    placed[i] = Object.assign(candidate, { subject, instrument, verdict, flags, texts, digest })
     if (reading.subject.kind !== 'check') {
       const sample: VisitSample = { composition: candidate.composition, resolutionPercent: reading.composition.resolution, sampledAt: at, workOrderId: subject.workOrderId, declared: reading.declared }
       const list = samples ?? []
@@ -179,10 +182,10 @@ async function visitSamples(tx: BulkTransaction, organisationId: string, fresh: 
   const visits = new Map<string, VisitSample[]>()
   if (ids.size === 0) return visits
   const rows = await tx<{ subject_id: string, sampled_at: Date, declared: string, work_order_id: string | null, composition: VisitSample['composition'], resolution: number }[]>`
-    select subject_id, sampled_at, declared, work_order_id, composition, resolution from readings
-    where organisation_id = ${organisationId} and subject_id = any(${[...ids]}::uuid[])
-      and sampled_at >= ${new Date(from - 6 * 3_600_000).toISOString()} and sampled_at <= ${new Date(to).toISOString()}
-    order by sampled_at, id`
+    select r.subject_id, r.sampled_at, r.declared, r.work_order_id, r.composition, r.resolution
+    from unnest(${[...ids]}::uuid[]) as wanted(id) join readings r on r.organisation_id = ${organisationId} and r.subject_id = wanted.id
+    where r.sampled_at >= ${new Date(from - 6 * 3_600_000).toISOString()} and r.sampled_at <= ${new Date(to).toISOString()}
+    order by r.sampled_at, r.id`
   for (const row of rows) {
     const sample = { composition: row.composition, resolutionPercent: row.resolution, sampledAt: row.sampled_at.getTime(), workOrderId: row.work_order_id, declared: row.declared }
     const list = visits.get(row.subject_id)
@@ -208,10 +211,10 @@ function rowOf(submission: OpenSubmission, placed: Placed, auditSequence: number
     reading.subject.kind, subject.subjectId, subject.workOrderId,
     reading.declared, verdict.kind, verdict.decidedBy, verdict.decidedBySubstance ?? null, verdict.purityPercent, purity?.uncertainty ?? null,
     composition.air ? composition.air.massFraction * 100 : null,
-    { json: contaminantsOf(composition, reading.declared) }, reading.composition.resolution, { json: reading.composition }, { json: composition }, { json: verdict },
+    JSON.stringify(contaminantsOf(composition, reading.declared)), reading.composition.resolution, placed.texts.reported, compositionJson(composition), placed.texts.verdict,
     verdict.limitSetVersion, verdict.attempt, placed.flags, reading.batch ?? null,
     reading.operator ?? null, reading.note ?? '', reading.conditions?.ambientCelsius ?? null, reading.conditions?.pressureKilopascal ?? null,
-    reading.conditions?.pressureKind ?? null, port, { json: placed.extras }, submission.source, submission.id,
+    reading.conditions?.pressureKind ?? null, port, placed.extras ? JSON.stringify(placed.extras) : null, submission.source, submission.id,
     placed.ordinal, placed.line, submission.sender, reading.id, submission.receivedAt.toISOString(), placed.digest, auditSequence,
   ]
 }

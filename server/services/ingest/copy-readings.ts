@@ -11,7 +11,7 @@ export const READING_COLUMNS = [
   'ordinal', 'line', 'sender', 'sender_reading_id', 'received_at', 'record_digest', 'audit_sequence',
 ] as const
 
-export type CopyValue = string | number | null | Buffer | readonly string[] | { json: unknown }
+export type CopyValue = string | number | null | Buffer | readonly string[]
 
 const special = /[\\\t\n\r]/
 const escapes: Record<string, string> = { '\\': '\\\\', '\t': '\\t', '\n': '\\n', '\r': '\\r' }
@@ -26,8 +26,7 @@ function copyText(value: CopyValue): string {
   if (typeof value === 'number') return String(value)
   if (typeof value === 'string') return escapeText(value)
   if (Buffer.isBuffer(value)) return `\\\\x${value.toString('hex')}`
-  if ('json' in value) return value.json === null ? '\\N' : escapeText(JSON.stringify(value.json))
-  return escapeText(`{${(value as readonly string[]).map(item => `"${item.replace(/["\\]/g, '\\$&')}"`).join(',')}}`)
+  return escapeText(`{${value.map(item => `"${item.replace(/["\\]/g, '\\$&')}"`).join(',')}}`)
 }
 
 /**

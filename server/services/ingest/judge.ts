@@ -1,11 +1,12 @@
 import { createHash } from 'node:crypto'
-import canonicalize from 'canonicalize'
+import { reportedJson } from '#shared/composition/composition-json'
 import { normaliseComposition } from '#shared/composition/normalise'
 import type { NormalisedComposition, ReportedComposition } from '#shared/composition/types'
 import type { Flag } from '#shared/intake/kinds'
 import type { PurityReading } from '#shared/intake/reading-schema'
 import type { Substance } from '#shared/refrigerants/designations'
 import { decideVerdict } from '#shared/verdict/decide'
+import { verdictJson } from '#shared/verdict/verdict-json'
 import type { EarlierSample, LimitSet, SampleValidity, Verdict } from '#shared/verdict/types'
 import type { InstrumentRecord } from './organisation-context'
 
@@ -111,25 +112,25 @@ export interface RecordDigestInput {
   verdict: Verdict
 }
 
+/** The texts that are digested, and stored as they are. */
+export interface RecordTexts { reported: string, verdict: string }
+
+export function recordTexts({ reported, verdict }: Pick<RecordDigestInput, 'reported' | 'verdict'>): RecordTexts {
+  return { reported: reportedJson(reported), verdict: verdictJson(verdict) }
+}
+
 /**
- * SHA-256 over what a reading claims, in canonical JSON (RFC 8785): a leaf of the audit event's Merkle
- * tree. A changed column, composition or verdict no longer fits it.
+ * SHA-256 over what a reading claims, in canonical JSON (RFC 8785, members in order of their names): a
+ * leaf of the audit event's Merkle tree. A changed column, composition or verdict no longer fits it.
  */
-export function recordDigest(input: RecordDigestInput): Buffer {
-  return createHash('sha256').update(canonicalize({
-    reading: input.readingId,
-    content: Buffer.from(input.contentDigest).toString('hex'),
-    submission: input.submissionId,
-    ordinal: input.ordinal,
-    revision: input.revision,
-    sampledAt: input.sampledAt.toISOString(),
-    shop: input.shopId,
-    subject: input.subjectId,
-    instrument: input.instrumentId,
-    declared: input.declared,
-    reported: input.reported,
-    verdict: input.verdict,
-  })!).digest()
+export function recordDigest(input: RecordDigestInput, texts: RecordTexts = recordTexts(input)): Buffer {
+  const instrument = input.instrumentId === null ? 'null' : `"${input.instrumentId}"`
+  const content = Buffer.from(input.contentDigest).toString('hex')
+  return createHash('sha256').update(
+    `{"content":"${content}","declared":"${input.declared}","instrument":${instrument},"ordinal":${input.ordinal},"reading":"${input.readingId}",`
+    + `"reported":${texts.reported},"revision":${input.revision},"sampledAt":"${input.sampledAt.toISOString()}","shop":"${input.shopId}",`
+    + `"subject":"${input.subjectId}","submission":"${input.submissionId}","verdict":${texts.verdict}}`,
+  ).digest()
 }
 
 export function normalise(reading: PurityReading): NormalisedComposition {

@@ -32,7 +32,7 @@ export async function processSubmission({ organisationId, submissionId }: { orga
   }
 }
 
-interface PreparedChunk extends Omit<Chunk, 'last'> {}
+type PreparedChunk = Omit<Chunk, 'last'>
 
 async function run(submission: OpenSubmission): Promise<void> {
   const report = { encoding: null as string | null, delimiter: null as string | null, extraColumns: [] as string[] }

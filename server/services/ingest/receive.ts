@@ -160,7 +160,7 @@ async function store(tx: BulkTransaction, organisationId: string, group: Waiting
   const stored = large
     ? storeLarge(tx, organisationId, group[0]!)
     : tx`insert into submission_chunks ${tx(group.flatMap(({ id, delivery }) => chunkRows(organisationId, id, delivery)))}`
-  await Promise.all([submitted, stored, ...enqueueIntake(tx, group.map(({ id }) => ({ organisationId, submissionId: id })))])
+  await Promise.all([submitted, stored, ...enqueueIntake(tx, group.map(({ id }) => ({ organisationId, submissionId: id })), 'first')])
 }
 
 function chunkRows(organisationId: string, submissionId: string, { spool }: Delivery) {

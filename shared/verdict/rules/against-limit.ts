@@ -40,6 +40,9 @@ function probabilityBeyond(value: number, u: number, limit: number, sense: Limit
   return normalUpper((limit - value) / u) / normalCdf(value / u)
 }
 
+/** A millionth of a percent: finer than any instrument, and the same number in every place that it is kept. */
+export const toMillionth = (value: number): number => Math.round(value * 1e6) / 1e6
+
 /**
  * One quantity against one limit. What lies below a detection limit that itself keeps the limit passes;
  * where the detection limit is too coarse for that, it is unclear.
@@ -49,13 +52,14 @@ export function againstLimit(rule: RuleName, { percent, u, detectionLimit }: Qua
     const kept = inside(detectionLimit, limit.value, sense) > 0 || (sense === 'maximum' && inside(detectionLimit, limit.value, sense) === 0)
     return { rule, ...(substance ? { substance } : {}), outcome: kept ? 'pass' : 'unclear', measured: detectionLimit, uncertainty: null, limit: limit.value, probabilityBeyond: null, belowDetection: true }
   }
+  const chance = probabilityBeyond(percent, u, limit.value, sense)
   return {
     rule,
     ...(substance ? { substance } : {}),
     outcome: outcomeOf(percent, u, limit.value, sense, decision),
-    measured: percent,
-    uncertainty: COVERAGE_FACTOR * u,
+    measured: toMillionth(percent),
+    uncertainty: toMillionth(COVERAGE_FACTOR * u),
     limit: limit.value,
-    probabilityBeyond: probabilityBeyond(percent, u, limit.value, sense),
+    probabilityBeyond: chance === null ? null : toMillionth(chance),
   }
 }

@@ -1,5 +1,6 @@
 import type { JudgedSample } from '../sample'
 import type { RuleResult } from '../types'
+import { toMillionth } from './against-limit'
 
 /** From this share on, another substance is what the system holds. */
 const DOMINANT_PERCENT = 50
@@ -17,6 +18,6 @@ export function judgeDeclared(sample: JudgedSample): RuleResult {
   const wrong = most >= DOMINANT_PERCENT && sample.purity.percent < DOMINANT_PERCENT
   return {
     rule: 'declared', ...(wrong && dominant ? { substance: dominant } : {}), outcome: wrong ? 'fail' : 'pass',
-    measured: sample.purity.percent, uncertainty: null, limit: null, probabilityBeyond: null,
+    measured: toMillionth(sample.purity.percent), uncertainty: null, limit: null, probabilityBeyond: null,
   }
 }

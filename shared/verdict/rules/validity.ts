@@ -1,5 +1,6 @@
 import type { SumCheck } from '../../composition/types'
 import type { RuleName, RuleOutcome, RuleResult, SampleValidity } from '../types'
+import { toMillionth } from './against-limit'
 
 function noted(rule: RuleName, outcome: RuleOutcome, measured: number | null = null, limit: number | null = null): RuleResult {
   return { rule, outcome, measured, uncertainty: null, limit, probabilityBeyond: null }
@@ -18,7 +19,7 @@ export function judgeValidity(validity: SampleValidity, sum: SumCheck): RuleResu
       ? noted('ambient', 'unclear', ambientCelsius, ambientMinimumCelsius)
       : noted('ambient', ambientCelsius > ambientMaximumCelsius ? 'unclear' : 'pass', ambientCelsius, ambientMaximumCelsius)
   return [
-    noted('sum', sum.outcome === 'agrees' ? 'pass' : 'unclear', sum.percent, 100),
+    noted('sum', sum.outcome === 'agrees' ? 'pass' : 'unclear', toMillionth(sum.percent), 100),
     noted('calibration', validity.calibrationOverdue ? 'warn' : 'pass'),
     noted('filter', validity.filterSpent ? 'unclear' : 'pass'),
     ambient,
