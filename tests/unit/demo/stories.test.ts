@@ -1,6 +1,9 @@
 import { describe, expect, it } from 'vitest'
 import { mean } from '#shared/statistics/describe'
 import { straightLine } from '#shared/statistics/regression'
+import { normaliseComposition } from '#shared/composition/normalise'
+import { decideVerdict } from '#shared/verdict/decide'
+import { defaultLimitSet } from '#shared/verdict/limits'
 import type { PurityReading } from '#shared/intake/reading-schema'
 import type { Substance } from '#shared/refrigerants/designations'
 import { declaredPercent } from '#fixtures/demo/measure'
@@ -120,5 +123,22 @@ describe.each([[20260101, '2026-12-01T17:40:00Z'], [20260101, '2026-08-02T14:05:
       expect(sequence).toBe(lines[0]!.instrument.sequence! + i)
       expect(receivedAt.getTime() - Date.parse(sampledAt)).toBeGreaterThan(10 * 3_600_000)
     })
+  })
+
+  it('7: this morning holds each of the five next steps, and one vehicle waits for a second sample', () => {
+    const uncertainties = new Map(organisation.instruments.map(({ serial, uncertainty }) => [serial, uncertainty]))
+    const stepOf = ({ declared, composition, instrument: { serial } }: PurityReading) => decideVerdict({
+      declared, composition: normaliseComposition(composition), resolutionPercent: composition.resolution, uncertainty: uncertainties.get(serial)!, limits: defaultLimitSet(), earlier: [],
+      validity: { calibrationOverdue: false, filterSpent: false, ambientCelsius: 20, ambientMinimumCelsius: 10, ambientMaximumCelsius: 49, instrumentOutOfControl: false },
+    }).kind
+    const today = organisation.readings.filter(reading => age(reading) < 0.5)
+    expect(today.length).toBeGreaterThanOrEqual(10)
+    expect(today.length).toBeLessThanOrEqual(30)
+    const stepsOf = (workOrder: string) => today.filter(({ reading: { subject } }) => subject.kind === 'vehicle' && subject.workOrder === workOrder).map(({ reading }) => stepOf(reading))
+    expect(stepsOf(stories.today.wrongGas)).toEqual(['isolate'])
+    expect(stepsOf(stories.today.muchAir)).toEqual(['connect-purge-air'])
+    expect(stepsOf(stories.today.tooClose)).toEqual(['sample-again'])
+    expect(stepsOf(stories.flammable.workOrder)[0]).toBe('isolate-flammable')
+    expect(today.filter(({ reading }) => stepOf(reading) === 'connect').length).toBeGreaterThanOrEqual(3)
   })
 })
