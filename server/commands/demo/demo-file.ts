@@ -6,7 +6,7 @@ import type { LoadedOrganisation } from './ensure-organisation'
 /** Bench instrument that the demo token speaks for. */
 const INSTRUMENT = 'HB-2041'
 
-export interface DemoFile {
+interface DemoFile {
   baseUrl: string
   signIns: { role: string, email: string, password: string, shop: string }[]
   deviceToken: string
