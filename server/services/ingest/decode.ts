@@ -27,7 +27,7 @@ export interface DecodeReport {
 export type DecodeEvent = { records: RawRecord[] } | { failure: DecodeFailure } | { report: DecodeReport }
 
 /** Records handed out at once. */
-const BATCH_RECORDS = 2_000
+const BATCH_RECORDS = 1_000
 /** A batch is handed out sooner once its source text has this many characters. */
 const BATCH_CHARACTERS = 2 * 1024 * 1024
 /** Bytes decoded at once. */
