@@ -3,7 +3,7 @@ import { fileURLToPath } from 'node:url'
 // Everything that changes how Coldslip is built. What changes how it runs is in server/settings.ts.
 export default defineNuxtConfig({
   compatibilityDate: '2026-11-01',
-  modules: ['@pinia/nuxt', '@nuxtjs/tailwindcss', 'nuxt-auth-utils', '@nuxt/icon'],
+  modules: ['@pinia/nuxt', '@nuxtjs/tailwindcss', 'nuxt-auth-utils'],
   devtools: { enabled: false },
   telemetry: false,
   css: ['~/assets/css/main.css'],
@@ -12,7 +12,6 @@ export default defineNuxtConfig({
   imports: { dirs: ['composables/**', 'stores'] },
   // The sign-in state is ours (a session row); the module only seals the cookie.
   auth: { loadStrategy: 'none' },
-  icon: { provider: 'none', serverBundle: false, clientBundle: { scan: true, sizeLimitKb: 256 } },
   app: {
     head: {
       htmlAttrs: { lang: 'en' },

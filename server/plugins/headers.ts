@@ -8,7 +8,8 @@ function contentSecurityPolicy(nonce: string): string {
   return [
     'default-src \'none\'',
     `script-src 'self' 'nonce-${nonce}'`,
-    `style-src 'self' 'nonce-${nonce}'`,
+    // While developing, Vite writes the styles into the page by script; a nonce would make the allowance void.
+    import.meta.dev ? 'style-src \'self\' \'unsafe-inline\'' : `style-src 'self' 'nonce-${nonce}'`,
     'style-src-attr \'unsafe-inline\'',
     'img-src \'self\' blob: data:',
     'font-src \'self\'',

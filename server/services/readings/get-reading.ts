@@ -125,5 +125,5 @@ async function samplesOfVisit(tx: Transaction, stored: StoredReading): Promise<R
   const near = (a: number, b: number) => rows[b]!.sampledAt.getTime() - rows[a]!.sampledAt.getTime() <= VISIT_MINUTES * 60_000
   while (from > 0 && near(from - 1, from)) from--
   while (to < rows.length - 1 && near(to, to + 1)) to++
-  return rows.slice(from, to + 1).map(({ id, sampledAt, verdict, purityPercent }) => ({ id, sampledAt: sampledAt.toISOString(), verdict, purityPercent }))
+  return rows.slice(from, to + 1).filter(row => row.id !== stored.id).map(({ id, sampledAt, verdict, purityPercent }) => ({ id, sampledAt: sampledAt.toISOString(), verdict, purityPercent }))
 }
