@@ -75,7 +75,8 @@ export async function readIntakeBody(event: H3Event): Promise<Body> {
     return { spool, mediaType, contentEncoding }
   } catch (error) {
     await spool.dispose()
-    throw error
+    // The sender went away in the middle: its socket's error must not pass for one of the database.
+    throw error instanceof IntakeRefused || !request.destroyed || request.complete ? error : new IntakeRefused(400, 'cut', 'The body ended before its announced length.')
   } finally {
     clearTimeout(stalled)
   }
