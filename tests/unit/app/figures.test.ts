@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { byteText, countText, figure, limitFigure, padToPoint } from '../../../app/utils/figures'
+import { figure, limitFigure, padToPoint } from '#shared/composition/figures'
+import { byteText, countText } from '../../../app/utils/figures'
 
 describe('figure', () => {
   it('keeps the significant figures of the instrument', () => {

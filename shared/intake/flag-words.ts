@@ -1,4 +1,4 @@
-import type { Flag, SubjectKind, SubmissionSource, SubmissionStatus } from '#shared/intake/kinds'
+import type { Flag, SubjectKind, SubmissionSource, SubmissionStatus } from './kinds'
 
 /** What was noted with a reading that was taken all the same. */
 export const FLAG_WORDS: Record<Flag, string> = {

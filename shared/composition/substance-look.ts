@@ -1,4 +1,4 @@
-import type { Substance } from '#shared/refrigerants/designations'
+import type { Substance } from '../refrigerants/designations'
 
 /**
  * Colour and pattern of each substance. Hues are the nine of the "muted" scheme and its pale grey of
@@ -44,9 +44,4 @@ export function substanceName(substance: Substance | 'air'): string {
   if (substance === 'HC') return 'Hydrocarbons'
   if (substance === 'OTHER') return 'Unknown'
   return substance === 'air' ? 'Air' : substance
-}
-
-/** Reference to the drawn tile; the tiles stand once in the page (SubstancePatterns.vue). */
-export function patternFill(substance: Substance | 'air'): string {
-  return `url(#substance-${substance})`
 }

@@ -1,4 +1,4 @@
-import type { RuleOutcome, SourceMark } from '#shared/verdict/types'
+import type { RuleOutcome, SourceMark } from './types'
 
 /** Outcome of a rule in words, with a drawing of its own (RuleOutcomeMark.vue). */
 export const OUTCOME_WORDS: Record<RuleOutcome, string> = {

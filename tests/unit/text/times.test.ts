@@ -1,5 +1,5 @@
 import { expect, it } from 'vitest'
-import { dayIn, longDayIn, longStampIn, stampIn, timeIn, zoneText } from '../../../app/utils/times'
+import { dayIn, longDayIn, longStampIn, stampIn, timeIn, zoneText } from '#shared/text/times'
 
 // The tests run in Asia/Kathmandu (UTC+5:45): a local time slipping in would show.
 it('tells the day and the time of the shop, not of the machine', () => {

@@ -1,7 +1,7 @@
-import type { ReadingDetail, ReadingRow } from '#shared/api/readings'
-import type { Designation, Substance } from '#shared/refrigerants/designations'
-import { belongsTo, isFlammable } from '#shared/verdict/flammable-substances'
-import type { RuleName, RuleOutcome, RuleResult } from '#shared/verdict/types'
+import type { ReadingDetail, ReadingRow } from '../api/readings'
+import type { Designation, Substance } from '../refrigerants/designations'
+import { belongsTo, isFlammable } from '../verdict/flammable-substances'
+import type { RuleName, RuleOutcome, RuleResult } from '../verdict/types'
 import { figure } from './figures'
 import { substanceName } from './substance-look'
 

@@ -1,8 +1,8 @@
 import { describe, expect, it } from 'vitest'
 import type { ReadingDetail } from '../../../shared/api/readings'
 import { SUBSTANCES } from '../../../shared/refrigerants/designations'
-import { lensEnd, lensTicks, stripFromDetail, stripFromRow, stripSentence, type Lane } from '../../../app/utils/strip'
-import { SUBSTANCE_LOOKS } from '../../../app/utils/substance-look'
+import { lensEnd, lensTicks, stripFromDetail, stripFromRow, stripSentence, type Lane } from '#shared/composition/strip'
+import { SUBSTANCE_LOOKS } from '#shared/composition/substance-look'
 
 const words = { title: '', finding: '', unit: '% by mass', source: '', mark: 'verified' as const }
 const rule = (name: string, more: object) => ({ rule: name, outcome: 'pass', measured: null, uncertainty: null, limit: null, probabilityBeyond: null, words, ...more })
