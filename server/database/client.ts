@@ -3,6 +3,7 @@ import { drizzle, type PostgresJsDatabase } from 'drizzle-orm/postgres-js'
 import postgres from 'postgres'
 import { settings } from '../settings'
 import * as audit from './schema/audit'
+import * as certificates from './schema/certificates'
 import * as instruments from './schema/instruments'
 import * as limits from './schema/limits'
 import * as organisations from './schema/organisations'
@@ -10,7 +11,7 @@ import * as readings from './schema/readings'
 import * as subjects from './schema/subjects'
 import * as submissions from './schema/submissions'
 
-export const schema = { ...organisations, ...instruments, ...subjects, ...limits, ...submissions, ...readings, ...audit }
+export const schema = { ...organisations, ...instruments, ...subjects, ...limits, ...submissions, ...readings, ...audit, ...certificates }
 export type Database = PostgresJsDatabase<typeof schema>
 
 /**
