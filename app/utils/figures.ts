@@ -9,3 +9,8 @@ export function byteText(bytes: number): string {
   if (bytes < 1_000_000) return `${(bytes / 1000).toFixed(1)} kB`
   return `${(bytes / 1_000_000).toFixed(1)} MB`
 }
+
+/** A number and its unit stay on one line. */
+export function keepUnits(text: string): string {
+  return text.replace(/(\d) (?=%|°C|kPa)/g, '$1\u00a0')
+}

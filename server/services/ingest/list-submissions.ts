@@ -1,4 +1,4 @@
-import { and, asc, desc, eq, inArray, lt, or, sql } from 'drizzle-orm'
+import { and, asc, desc, eq, gt, inArray, lt, or, sql } from 'drizzle-orm'
 import type { RefusedRow, SubmissionDetail, SubmissionList, SubmissionRow } from '#shared/api/intake'
 import { instruments } from '../../database/schema/instruments'
 import { people, shops } from '../../database/schema/organisations'
@@ -48,11 +48,20 @@ function rowOf({ submission: s, shop, serial, person }: Selected): SubmissionRow
 const inShops = ({ organisationId, shopIds }: Scope) => and(eq(submissions.organisationId, organisationId),
   inArray(submissions.shopId, shopIds.length > 0 ? shopIds : ['00000000-0000-0000-0000-000000000000']))
 
-/** Newest first; the cursor is the last one's time and id. */
-export async function listSubmissions(scope: Scope, cursor: { receivedAt: Date, id: string } | null): Promise<SubmissionList> {
+export interface SubmissionsQuery {
+  /** The last one's time and id. */
+  cursor: { receivedAt: Date, id: string } | null
+  /** Leaves out what was taken in whole or still waits. */
+  onlyRefused: boolean
+}
+
+/** Newest first. */
+export async function listSubmissions(scope: Scope, { cursor, onlyRefused }: SubmissionsQuery): Promise<SubmissionList> {
   return withOrganisation(scope.organisationId, async (tx) => {
     const rows = await select(tx)
-      .where(and(inShops(scope), cursor ? or(lt(submissions.receivedAt, cursor.receivedAt), and(eq(submissions.receivedAt, cursor.receivedAt), lt(submissions.id, cursor.id))) : undefined))
+      .where(and(inShops(scope),
+        onlyRefused ? or(eq(submissions.status, 'failed'), gt(submissions.refusedCount, 0)) : undefined,
+        cursor ? or(lt(submissions.receivedAt, cursor.receivedAt), and(eq(submissions.receivedAt, cursor.receivedAt), lt(submissions.id, cursor.id))) : undefined))
       .orderBy(desc(submissions.receivedAt), desc(submissions.id)).limit(PAGE + 1)
     const page = rows.slice(0, PAGE)
     const last = page.at(-1)?.submission

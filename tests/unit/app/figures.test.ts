@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { figure, limitFigure, padToPoint } from '#shared/composition/figures'
-import { byteText, countText } from '../../../app/utils/figures'
+import { byteText, countText, keepUnits } from '../../../app/utils/figures'
 
 describe('figure', () => {
   it('keeps the significant figures of the instrument', () => {
@@ -32,4 +32,9 @@ it('groups counts and names sizes', () => {
   expect(byteText(999)).toBe('999 B')
   expect(byteText(1500)).toBe('1.5 kB')
   expect(byteText(2_500_000)).toBe('2.5 MB')
+})
+
+it('keeps a unit on the line of its number, and words as they are', () => {
+  expect(keepUnits('98.1 ± 0.6 % R-134a, limit 98 % at 20 °C')).toBe('98.1 ± 0.6\u00a0% R-134a, limit 98\u00a0% at 20\u00a0°C')
+  expect(keepUnits('sample 2 of 3')).toBe('sample 2 of 3')
 })
