@@ -7,6 +7,7 @@ export const RIGHTS = {
   'readings.see': ['technician', 'advisor', 'quality', 'owner'],
   'readings.enter': ['technician', 'quality', 'owner'],
   'readings.correct': ['quality', 'owner'],
+  'certificates.withdraw': ['quality', 'owner'],
   'intake.see': ['technician', 'quality', 'owner'],
   'limits.see': ['technician', 'advisor', 'quality', 'owner'],
   'limits.edit': ['quality', 'owner'],

@@ -34,21 +34,22 @@ function quantity(percent: number, low: number, high: number, belowDetection: bo
   return { percent, u: Math.sqrt(u2), detectionLimit: belowDetection ? high : null }
 }
 
-const NOTHING: Quantity = { percent: 0, u: 0, detectionLimit: null }
+/** What the instrument did not report at all: not measured, which is not the same as none. */
+export const NOT_REPORTED: Quantity = { percent: 0, u: 0, detectionLimit: null }
 
 /** Two contents that are judged together; their uncertainties are independent. */
 function plus(a: Quantity, b: Quantity): Quantity {
-  if (a === NOTHING) return b
+  if (a === NOT_REPORTED) return b
   const seen = a.detectionLimit === null || b.detectionLimit === null
   return { percent: a.percent + b.percent, u: Math.hypot(a.u, b.u), detectionLimit: seen ? null : a.detectionLimit! + b.detectionLimit! }
 }
 
 /** Draws what the rules look at from a normalised composition, with the instrument's uncertainty and the display step. */
 export function judgedSample(composition: NormalisedComposition, declared: Designation, uncertainty: InstrumentUncertainty, resolutionPercent: number): JudgedSample {
-  let purity = NOTHING
-  let flammable = NOTHING
-  let mild = NOTHING
-  let unknown = NOTHING
+  let purity = NOT_REPORTED
+  let flammable = NOT_REPORTED
+  let mild = NOT_REPORTED
+  let unknown = NOT_REPORTED
   const foreign: JudgedSample['foreign'] = []
   for (const part of composition.parts) {
     const { substance } = part
@@ -62,7 +63,7 @@ export function judgedSample(composition: NormalisedComposition, declared: Desig
     }
   }
   if (mild.percent >= MILDLY_FLAMMABLE_PERCENT) flammable = plus(flammable, mild)
-  if (purity === NOTHING) purity = { percent: 0, u: Math.hypot(uncertainty.default.absolutePercent, resolutionPercent / Math.sqrt(12)), detectionLimit: null }
+  if (purity === NOT_REPORTED) purity = { percent: 0, u: Math.hypot(uncertainty.default.absolutePercent, resolutionPercent / Math.sqrt(12)), detectionLimit: null }
   const { air } = composition
   return {
     purity, flammable, unknown, foreign,
@@ -78,6 +79,7 @@ export function meanSample(samples: JudgedSample[]): JudgedSample {
   if (samples.length === 1) return samples[0]!
   const n = samples.length
   const mean = (quantities: Quantity[]): Quantity => {
+    if (quantities.every(q => q === NOT_REPORTED)) return NOT_REPORTED
     let percent = 0
     let u2 = 0
     let limit: number | null = 0
@@ -96,7 +98,7 @@ export function meanSample(samples: JudgedSample[]): JudgedSample {
     unknown: mean(samples.map(sample => sample.unknown)),
     foreign: [...substances].map(substance => ({
       substance,
-      quantity: mean(samples.map(sample => sample.foreign.find(item => item.substance === substance)?.quantity ?? NOTHING)),
+      quantity: mean(samples.map(sample => sample.foreign.find(item => item.substance === substance)?.quantity ?? NOT_REPORTED)),
     })),
     air: airs.every(air => air !== null) ? mean(airs) : airs.at(-1)!,
   }

@@ -160,7 +160,7 @@ function findingOf(result: RuleResult, declared: Designation): string {
     case 'control': return outcome === 'pass' ? 'Nothing known against it.' : UNFIT.control!
     case 'repeats': return outcome === 'unclear' ? UNFIT.repeats! : outcome === 'warn' ? 'The latest samples agree; an earlier one was passed over.' : 'The samples agree; their mean was judged.'
   }
-  if (outcome === 'absent') return 'Not measured.'
+  if (outcome === 'absent') return 'Not reported by the instrument.'
   if (result.belowDetection) return outcome === 'pass' ? 'Below detection.' : 'Below detection, but the detection limit is too coarse for this limit.'
   if (outcome === 'pass') return 'Inside the limit, beyond doubt.'
   if (outcome === 'unclear') return 'Inside the guard band: too close to call.'

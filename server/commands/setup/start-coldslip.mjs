@@ -41,6 +41,7 @@ async function bringUp() {
     NITRO_SHUTDOWN_TIMEOUT: '10000',
     DATABASE_URL: database.application ?? migrated,
     NUXT_SESSION_PASSWORD: process.env.NUXT_SESSION_PASSWORD || secrets.sessionPassword,
+    COLDSLIP_SIGNING_KEY: process.env.COLDSLIP_SIGNING_KEY || secrets.signingKey,
   }
   const demo = await demoFor({ root, dataFolder, baseUrl, host, env, owner, named, databaseIsNew: database.isNew ?? true })
   const server = startServerProcess(root, { ...env, ...(demo ? { COLDSLIP_DEMO: '1', COLDSLIP_DEMO_FILE: join(dataFolder, 'demo.json') } : { COLDSLIP_DEMO: '0' }) })

@@ -1,6 +1,6 @@
 import { COVERAGE_FACTOR } from '../../statistics/decision'
 import { normalCdf, normalUpper } from '../../statistics/normal'
-import type { Quantity } from '../sample'
+import { NOT_REPORTED, type Quantity } from '../sample'
 import type { DecisionRule, Limit, RuleName, RuleOutcome, RuleResult } from '../types'
 import type { Substance } from '../../refrigerants/designations'
 
@@ -45,9 +45,11 @@ export const toMillionth = (value: number): number => Math.round(value * 1e6) / 
 
 /**
  * One quantity against one limit. What lies below a detection limit that itself keeps the limit passes;
- * where the detection limit is too coarse for that, it is unclear.
+ * where the detection limit is too coarse for that, it is unclear. What was not reported is absent.
  */
-export function againstLimit(rule: RuleName, { percent, u, detectionLimit }: Quantity, limit: Limit, sense: LimitSense, decision: DecisionRule, substance?: Substance): RuleResult {
+export function againstLimit(rule: RuleName, quantity: Quantity, limit: Limit, sense: LimitSense, decision: DecisionRule, substance?: Substance): RuleResult {
+  const { percent, u, detectionLimit } = quantity
+  if (quantity === NOT_REPORTED) return { rule, outcome: 'absent', measured: null, uncertainty: null, limit: limit.value, probabilityBeyond: null }
   if (detectionLimit !== null) {
     const kept = inside(detectionLimit, limit.value, sense) > 0 || (sense === 'maximum' && inside(detectionLimit, limit.value, sense) === 0)
     return { rule, ...(substance ? { substance } : {}), outcome: kept ? 'pass' : 'unclear', measured: detectionLimit, uncertainty: null, limit: limit.value, probabilityBeyond: null, belowDetection: true }
