@@ -3,7 +3,7 @@ import { READING_SCHEMA, type PurityReading } from '../intake/reading-schema'
 /** Invented vehicle; the check digit of its number is valid. */
 export const exampleReading: PurityReading = {
   schema: READING_SCHEMA,
-  id: 'hb2041-000123',
+  id: 'example-000123',
   sampledAt: '2026-03-14T09:26:53-05:00',
   instrument: { serial: 'HB-2041', sequence: 123 },
   subject: { kind: 'vehicle', vin: 'ZZ0TST003S0000123', plate: 'TST 001', workOrder: 'WO-1877', port: 'low' },
@@ -27,7 +27,7 @@ export const exampleReading: PurityReading = {
 
 const cylinderReading: PurityReading = {
   schema: READING_SCHEMA,
-  id: 'hb2041-000124',
+  id: 'example-000124',
   sampledAt: '2026-03-14T14:41:07Z',
   instrument: { serial: 'HB-2041', sequence: 124 },
   subject: { kind: 'cylinder', tag: 'CY-07' },
@@ -41,7 +41,7 @@ export const exampleNdjson = `${JSON.stringify(exampleReading)}\n${JSON.stringif
 
 export const exampleCsv = [
   'id;sampled_at;instrument_serial;sequence;subject_kind;vin;plate;work_order;cylinder;declared;basis;air;resolution;r134a_pct;r1234yf_pct;hc_pct;air_pct;ambient_c;note',
-  'hb2041-000125;2026-03-14T10:02:11-05:00;HB-2041;125;vehicle;;TST 002;WO-1878;;R-134a;mass;apart;0,1;99,9;0,1;<0,3;1,2;22,0;"second try; ""slow"" sample"',
-  'hb2041-000126;2026-03-14T10:09:40-05:00;HB-2041;126;cylinder;;;;CY-07;R-1234yf;mass;within;0,1;;98,5;1,1;0,4;22,0;',
+  'example-000125;2026-03-14T10:02:11-05:00;HB-2041;125;vehicle;;TST 002;WO-1878;;R-134a;mass;apart;0,1;99,9;0,1;<0,3;1,2;22,0;"second try; ""slow"" sample"',
+  'example-000126;2026-03-14T10:09:40-05:00;HB-2041;126;cylinder;;;;CY-07;R-1234yf;mass;within;0,1;;98,5;1,1;0,4;22,0;',
   '',
 ].join('\r\n')

@@ -29,4 +29,12 @@ export const PROBLEMS = [
   { code: 'fault', status: 500, meaning: 'A fault of the server. Nothing was taken.' },
   { code: 'busy', status: 503, meaning: 'The server has too much to do. Nothing was taken; wait as long as Retry-After says.' },
   { code: 'unavailable', status: 503, meaning: 'The database does not answer. Nothing was taken; wait as long as Retry-After says.' },
+  { code: 'signed-out', status: 401, meaning: 'Nobody is signed in.' },
+  { code: 'sign-in', status: 401, meaning: 'The address or the password is wrong.' },
+  { code: 'forbidden', status: 403, meaning: 'The role does not include this.' },
+  { code: 'cross-site', status: 403, meaning: 'The request did not come from a page of this server.' },
+  { code: 'demo', status: 403, meaning: 'Demo accounts work only on the machine itself.' },
+  { code: 'no-certificate', status: 404, meaning: 'No certificate has been issued for this reading.' },
+  { code: 'certificate-withdrawn', status: 409, meaning: 'The certificate has been withdrawn.' },
+  { code: 'signing-key', status: 503, meaning: 'This server has no signing key, so it issues no certificates.' },
 ] as const

@@ -200,3 +200,24 @@ describe('tokens', () => {
     expect(suite.server.logs()).not.toContain(suite.a.token)
   })
 })
+
+describe('a device that sends too much', () => {
+  it('is told to slow down with 429 and Retry-After, and all that was acknowledged is stored', async () => {
+    const { startServer } = await import('../support/server')
+    const slow = await startServer({ databaseUrls: suite.database, env: { COLDSLIP_INTAKE_PER_MINUTE: '60' } })
+    try {
+      const answers = await Promise.all(Array.from({ length: 60 }, (_, i) => request(slow, '/api/v1/readings', { json: goodReading(`flood-${i}`), token: suite.b.token })))
+      const taken = answers.filter(answer => answer.status === 202)
+      const told = answers.filter(answer => answer.status === 429)
+      expect(taken.length + told.length).toBe(60)
+      expect(taken.length).toBeGreaterThanOrEqual(20)
+      expect(told.length).toBeGreaterThan(10)
+      expect(Number(told[0]!.headers.get('retry-after'))).toBeGreaterThanOrEqual(1)
+      expect(told[0]!.body).toMatchObject({ retryable: true })
+      const [stored] = await suite.owner`select count(*)::int as n from submissions where id = any(${taken.map(answer => answer.body.submission.id)}::uuid[])`
+      expect(stored!.n).toBe(taken.length)
+    } finally {
+      await slow.stop()
+    }
+  })
+})

@@ -63,7 +63,7 @@ export async function run({ ownerUrl, applicationUrl }: BenchDatabase): Promise<
   await once(bare, 'listening')
 
   const port = await freePort()
-  const child = spawn(process.execPath, [SERVER], { stdio: ['ignore', 'ignore', 'inherit'], env: { ...process.env, DATABASE_URL: applicationUrl, HOST: '127.0.0.1', PORT: String(port), COLDSLIP_ROLE: 'web', NUXT_SESSION_PASSWORD: 'only-for-the-bench-only-for-the-bench' } })
+  const child = spawn(process.execPath, [SERVER], { stdio: ['ignore', 'ignore', 'inherit'], env: { ...process.env, DATABASE_URL: applicationUrl, HOST: '127.0.0.1', PORT: String(port), COLDSLIP_ROLE: 'web', COLDSLIP_INTAKE_PER_MINUTE: '10000000', NUXT_SESSION_PASSWORD: 'only-for-the-bench-only-for-the-bench' } })
   const intake = `http://127.0.0.1:${port}/api/v1/readings`
   while (!(await fetch(`http://127.0.0.1:${port}/api/ready`).then(answer => answer.ok, () => false))) await new Promise(resolve => setTimeout(resolve, 100))
 
