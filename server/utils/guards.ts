@@ -2,6 +2,7 @@ import type { H3Event } from 'h3'
 import { can, type Right } from '#shared/access/roles'
 import { findMember, type Member } from '../services/accounts/sessions'
 import { identifyDevice, type Device } from '../services/instruments/identify-device'
+import { noteUse } from '../services/instruments/note-use'
 import type { Scope } from '../services/readings/reading-filters'
 import { Problem } from './problem'
 
@@ -58,8 +59,10 @@ const unauthorised = () => new Problem(401, 'token', 'Send a valid device token:
 export async function requireDevice(event: H3Event, scope: 'intake' | 'read'): Promise<Device> {
   const header = getHeader(event, 'authorization') ?? ''
   const token = /^Bearer ([\x21-\x7E]{1,200})$/i.exec(header)?.[1]
-  const device = token ? await identifyDevice(token, new Date()) : null
+  const now = new Date()
+  const device = token ? await identifyDevice(token, now) : null
   if (!device) throw unauthorised()
+  await noteUse(device, now)
   if (!device.scopes.includes(scope)) throw new Problem(403, 'scope', `This token may not do that: it lacks the scope "${scope}".`)
   return device
 }

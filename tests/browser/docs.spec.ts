@@ -9,6 +9,9 @@ test('the documentation opens signed out, its example can be posted as it stands
   const json = /<<'JSON'\n([\s\S]+)\nJSON$/.exec(example)![1]!
   const answer = await request.post('/api/v1/readings', { data: json, headers: { 'authorization': `Bearer ${demo.deviceToken}`, 'content-type': 'application/json' } })
   expect(answer.status()).toBe(202)
+  const { submission } = await answer.json() as { submission: { id: string } }
+  const outcome = async () => (await (await request.get(`/api/v1/submissions/${submission.id}`, { headers: { authorization: `Bearer ${demo.deviceToken}` } })).json()).submission
+  await expect.poll(outcome).toMatchObject({ status: 'done', received: 1, refused: 0 })
   expect(example, 'the address is that of this server').toContain(`${new URL(page.url()).origin}/api/v1/readings`)
 
   const csv = await page.locator('.sample').filter({ hasText: 'A file' }).locator('pre').innerText()

@@ -50,8 +50,8 @@ export function freshReading({ instrumentSerial }: Pick<Demo, 'instrumentSerial'
   } as PurityReading & { subject: { plate: string } }
 }
 
-/** Posts as the device does. @returns the answer's status. */
+/** Posts as a device does that waits for its next step, so that one post is judged before the next one comes. @returns the answer's status. */
 export async function post(client: APIRequestContext, token: string, reading: PurityReading): Promise<number> {
-  const answer = await client.post('/api/v1/readings', { data: reading, headers: { authorization: `Bearer ${token}` } })
+  const answer = await client.post('/api/v1/readings', { data: reading, headers: { authorization: `Bearer ${token}`, prefer: 'wait=10' } })
   return answer.status()
 }

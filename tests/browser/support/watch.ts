@@ -15,6 +15,8 @@ export class Watch {
 
   async over(context: BrowserContext): Promise<void> {
     await context.addInitScript(() => {
+      // In the page; the console is how it reaches the test.
+      // eslint-disable-next-line no-console
       document.addEventListener('securitypolicyviolation', event => console.error(`securitypolicyviolation: ${event.effectiveDirective} stopped ${event.blockedURI} at ${event.sourceFile}:${event.lineNumber}`))
     })
     context.on('console', (message) => {
