@@ -1,4 +1,7 @@
 import { fileURLToPath } from 'node:url'
+import { FONT_FILES } from './server/services/certificates/pdf/fonts'
+
+const CERTIFICATE_FONTS = Object.values(FONT_FILES)
 
 // Everything that changes how Coldslip is built. What changes how it runs is in server/settings.ts.
 export default defineNuxtConfig({
@@ -37,7 +40,10 @@ export default defineNuxtConfig({
   nitro: {
     preset: 'node-server',
     esbuild: { options: { target: 'node20' } },
-    externals: { inline: [] },
+    // Fonts of the certificates (server/services/certificates/pdf/fonts.ts): read by path, so the tracer does not see them.
+    externals: { inline: [], traceInclude: CERTIFICATE_FONTS.map(file => fileURLToPath(new URL(`./node_modules/${file}`, import.meta.url))) },
+    // The stand-alone checker of certificates, for whoever holds one.
+    publicAssets: [{ baseURL: 'certificates', dir: fileURLToPath(new URL('./fixtures/certificates', import.meta.url)), maxAge: 300 }],
     alias: { '#server': fileURLToPath(new URL('./server', import.meta.url)) },
   },
 })

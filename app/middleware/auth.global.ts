@@ -1,7 +1,7 @@
 import { ownPath } from '~/utils/own-path'
 
 /** Pages that need no account. */
-const PUBLIC = ['/docs', '/properties']
+const PUBLIC = ['/docs', '/properties', '/verify']
 
 /** Leads to the sign-in page and back; the server checks every request again by itself. */
 export default defineNuxtRouteMiddleware(async (to) => {
