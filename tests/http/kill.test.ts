@@ -96,6 +96,8 @@ describe(`killing the process at any moment (seed ${SEED})`, () => {
     expect(counted!.n).toBe(stored.length)
     const [rolled] = await owner`select coalesce(sum(n), 0)::int as n from reading_rollups`
     expect(rolled!.n).toBe(stored.length)
+    const { recountRollups } = await import('#server/services/ingest/recount-rollups')
+    expect(await recountRollups(shop.organisationId, { repair: false })).toEqual([])
     const { verifyChain } = await import('#server/services/audit/verify-chain')
     expect((await verifyChain(shop.organisationId)).faults).toEqual([])
     expect(acknowledged.size).toBeGreaterThan(20)
