@@ -1,4 +1,4 @@
-import type { Page } from '@playwright/test'
+import { request, type Page } from '@playwright/test'
 import type { ReadingRow } from '#shared/api/readings'
 import { allReadings, freshReading, idsOf, post, readingsTable, shownIds } from './support/readings'
 import { answersToTaps, expect, larkfold, test, visit } from './support/test'
@@ -22,7 +22,15 @@ test.beforeEach(async ({ demo, signedInAs }) => signedInAs(larkfold(demo, 'owner
 
 test.describe('filters, held against readings that were fetched without any', () => {
   const PERIOD = 30 * 86_400_000
-  const cases: { name: string, set: (page: Page, all: ReadingRow[]) => Promise<(row: ReadingRow) => boolean> }[] = [
+  let all: ReadingRow[]
+
+  test.beforeAll(async ({ demo, sessionOf }) => {
+    const client = await request.newContext({ baseURL: process.env.BASE_URL, storageState: { cookies: await sessionOf(larkfold(demo, 'owner')), origins: [] } })
+    all = await allReadings(client)
+    await client.dispose()
+  })
+
+  const cases: { name: string, set: (page: Page) => Promise<(row: ReadingRow) => boolean> }[] = [
     {
       name: 'two verdicts',
       set: async (page) => {
@@ -41,7 +49,7 @@ test.describe('filters, held against readings that were fetched without any', ()
     },
     {
       name: 'shop and period, days as the shop counts them',
-      set: async (page, all) => {
+      set: async (page) => {
         const form = await openFilters(page)
         const last = Date.parse(all[0]!.sampledAt)
         const from = new Date(last - 2 * PERIOD).toISOString().slice(0, 10)
@@ -70,7 +78,7 @@ test.describe('filters, held against readings that were fetched without any', ()
     },
     {
       name: 'batch',
-      set: async (page, all) => {
+      set: async (page) => {
         const { batch } = all.find(row => row.batch !== null)!
         const field = (await openFilters(page)).getByLabel('Batch')
         await field.fill(batch!)
@@ -80,7 +88,7 @@ test.describe('filters, held against readings that were fetched without any', ()
     },
     {
       name: 'text that is part of a plate',
-      set: async (page, all) => {
+      set: async (page) => {
         const { label } = all.find(row => row.subject.plate !== null && row.subject.label === row.subject.plate)!.subject
         await page.getByRole('searchbox').fill(label.toLowerCase())
         return row => row.subject.plate === label
@@ -101,10 +109,9 @@ test.describe('filters, held against readings that were fetched without any', ()
 
   for (const { name, set } of cases) {
     test(name, async ({ page, demo, another }) => {
-      const all = await allReadings(page.request)
       await visit(page, '/readings')
       await expectRows(page, all)
-      const wanted = all.filter(await set(page, all))
+      const wanted = all.filter(await set(page))
       expect(wanted.length, 'the demo has some').toBeGreaterThan(0)
       await expectRows(page, wanted)
 
@@ -126,7 +133,6 @@ test.describe('filters, held against readings that were fetched without any', ()
   }
 
   test('a filter is taken off by its chip, and nothing found is said plainly', async ({ page }) => {
-    const all = await allReadings(page.request)
     await visit(page, '/readings?verdict=isolate&subject=vehicle&text=zz-not-there')
     await expectRows(page, [])
     const chips = page.getByRole('list', { name: 'Filters that are set' })
@@ -138,7 +144,6 @@ test.describe('filters, held against readings that were fetched without any', ()
   })
 
   test('the shop in view narrows every list', async ({ page }) => {
-    const all = await allReadings(page.request)
     await visit(page, '/readings')
     await page.getByLabel('Shop in view').filter({ visible: true }).selectOption('Larkfold Mill Road')
     await expectRows(page, all.filter(row => row.shop.name === 'Larkfold Mill Road'))
@@ -148,7 +153,7 @@ test.describe('filters, held against readings that were fetched without any', ()
   })
 })
 
-test('older pages follow one another without a repeat or a gap, even while readings come in', async ({ page, demo, request }) => {
+test('older pages follow one another without a repeat or a gap, even while readings come in', async ({ page, demo, request: device }) => {
   const all = await allReadings(page.request)
   await visit(page, '/readings')
   const table = readingsTable(page)
@@ -162,7 +167,7 @@ test('older pages follow one another without a repeat or a gap, even while readi
   // Read further down, the list holds still and counts what is new.
   await older.scrollIntoViewIfNeeded()
   const reading = freshReading(demo)
-  expect(await post(request, demo.deviceToken, reading)).toBe(200)
+  expect(await post(device, demo.deviceToken, reading)).toBe(200)
   const news = page.getByRole('button', { name: '1 new' })
   await expect(news).toBeVisible()
   expect(await shownIds(table)).toEqual(idsOf(all.slice(0, 3 * PAGE)))

@@ -11,6 +11,8 @@ interface Screen {
   path: (client: APIRequestContext) => Promise<string> | string
   signedOut?: boolean
   status?: number
+  /** Where it is seen, if not everywhere. */
+  only?: 'desktop' | 'phone'
   prepare?: (page: Page) => Promise<void>
 }
 
@@ -28,11 +30,10 @@ const SCREENS: Screen[] = [
   { name: 'sign-in', path: () => '/sign-in', signedOut: true },
   { name: 'documentation', path: () => '/docs/intake', signedOut: true },
   { name: 'bench', path: () => '/bench' },
-  { name: 'readings', path: () => '/readings' },
+  { name: 'readings', path: () => '/readings?verdict=sample-again' },
   { name: 'readings, filters open', path: () => '/readings?verdict=isolate&subject=vehicle', prepare: page => page.getByRole('button', { name: /^Filters/ }).click() },
   { name: 'readings, nothing found', path: () => '/readings?text=zz-not-there' },
-  { name: 'readings, one open', path: async client => `/readings?open=${await readingWith(client, 'connect-purge-air')}`, prepare: page => page.locator('.reading-sheet').waitFor() },
-  { name: 'reading, connect', path: async client => `/readings/${await readingWith(client, 'connect')}` },
+  { name: 'readings, one open', only: 'desktop', path: async client => `/readings?open=${await readingWith(client, 'connect-purge-air')}`, prepare: page => page.locator('.reading-sheet').waitFor() },
   {
     name: 'reading, sample again, all unfolded',
     path: async client => `/readings/${await readingWith(client, 'sample-again')}`,
@@ -45,15 +46,22 @@ const SCREENS: Screen[] = [
   { name: 'delivery with refused rows', path: client => deliveryWith(client, 'done') },
   { name: 'delivery that could not be read', path: client => deliveryWith(client, 'failed') },
   { name: 'settings', path: () => '/settings', prepare: page => page.getByRole('button', { name: /^Revoke/ }).first().waitFor() },
-  { name: 'more', path: () => '/more' },
-  { name: 'keys', path: () => '/bench', prepare: page => page.keyboard.press('?') },
+  { name: 'more', only: 'phone', path: () => '/more' },
+  { name: 'keys', only: 'desktop', path: () => '/bench', prepare: page => page.keyboard.press('?') },
   { name: 'no such page', path: () => '/nowhere', status: 404 },
 ]
 
 const RULES = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22a', 'wcag22aa']
 
-async function violations(page: Page): Promise<string[]> {
-  const { violations: found } = await new AxeBuilder({ page }).withTags(RULES).analyze()
+/** Of all these rules only those on colour can come out differently in the other theme. */
+const COLOUR_RULES = ['color-contrast', 'link-in-text-block']
+
+/** Rows are all made by one template, and the first fifteen hold every verdict: the others would only take minutes. */
+const LATER_ROWS = 'tbody tr:nth-child(n + 16)'
+
+async function violations(page: Page, onlyColour = false): Promise<string[]> {
+  const builder = new AxeBuilder({ page }).exclude(LATER_ROWS)
+  const { violations: found } = await (onlyColour ? builder.withRules(COLOUR_RULES) : builder.withTags(RULES)).analyze()
   return found.flatMap(({ id, help, nodes }) => nodes.map(node => `${id} (${help}): ${node.target.join(' ')}`))
 }
 
@@ -76,7 +84,8 @@ async function overhang(page: Page) {
 }
 
 for (const screen of SCREENS) {
-  test(`${screen.name}: nothing for axe in light and dark, nothing cut off, nothing too small to tap`, async ({ page, demo, signedInAs, watch, isMobile }) => {
+  const tag = screen.only ? [`@${screen.only}`] : []
+  test(`${screen.name}: nothing for axe in light and dark, nothing cut off, nothing too small to tap`, { tag }, async ({ page, demo, signedInAs, watch, isMobile }) => {
     if (!screen.signedOut) await signedInAs(larkfold(demo, 'owner'))
     if (screen.status) watch.awaits(new RegExp(`status of ${screen.status}`))
     await page.emulateMedia({ colorScheme: 'light' })
@@ -86,7 +95,7 @@ for (const screen of SCREENS) {
     expect(await violations(page), 'light').toEqual([])
     await page.emulateMedia({ colorScheme: 'dark' })
     await expect(page.locator('html')).toHaveCSS('background-color', 'rgb(11, 20, 24)')
-    expect(await violations(page), 'dark').toEqual([])
+    expect(await violations(page, true), 'dark').toEqual([])
 
     const { sideways, down, shell } = await overhang(page)
     expect(sideways, 'px beyond the right edge').toBe(0)
