@@ -4,7 +4,10 @@ export const CALLS = [
   { method: 'GET', path: '/api/v1/submissions/{id}', token: 'intake', summary: 'What became of a submission', meaning: 'Status, counts, and each refused record with its place, value, reason and mend.' },
   { method: 'GET', path: '/api/v1/readings', token: 'read', summary: 'List readings', meaning: 'Newest first, by keyset cursor.' },
   { method: 'GET', path: '/api/v1/readings/{id}', token: 'read', summary: 'One reading', meaning: 'With verdict, rules, limits in force and revisions.' },
-  { method: 'GET', path: '/api/v1/readings/{id}/certificate.pdf', token: 'read', summary: 'Certificate of a reading', meaning: 'As PDF.' },
+  { method: 'GET', path: '/api/v1/readings/{id}/certificate.pdf', token: 'read', summary: 'Certificate of a reading', meaning: 'As PDF on A4, or with format=letter on Letter. Where none has been issued for the reading as it stands, 404 with the code no-certificate.' },
+  { method: 'GET', path: '/api/v1/readings/{id}/certificate.json', token: 'read', summary: 'Signed certificate of a reading', meaning: 'The statement and its Ed25519 signature. Public keys: /.well-known/coldslip-keys.json. To check it without this server: /certificates/check-certificate.mjs.' },
+  { method: 'POST', path: '/api/v1/readings/{id}/certificate', token: 'intake and read', summary: 'Issue the certificate of a reading', meaning: 'Numbers, signs and keeps it: 201. Where the reading as it stands has one already, 200 with that one.' },
+  { method: 'GET', path: '/api/verify/{code}', token: null, summary: 'Whether a certificate is genuine', meaning: 'For anybody with the code on the paper: genuine, superseded or withdrawn, and nothing private.' },
   { method: 'GET', path: '/api/health', token: null, summary: 'The process answers', meaning: 'Always 200 while it runs.' },
   { method: 'GET', path: '/api/ready', token: null, summary: 'The server can work', meaning: 'Database, queue and storage are usable; 503 until they are.' },
 ] as const

@@ -3,6 +3,7 @@ import { readingListQuery } from '../api/readings'
 import { INTAKE_LIMITS } from '../intake/limits'
 import { INTAKE_CONTENT_ENCODINGS, INTAKE_MEDIA_TYPES } from '../intake/media-types'
 import { healthAnswer, problemAnswer, readingDetailAnswer, readingListAnswer, readyAnswer, receiptAnswer, submissionDetailAnswer, waitedAnswer } from './answers'
+import { certificateAnswer, publicCertificateAnswer, signedCertificateAnswer } from './certificate-answers'
 import { CALLS, IDEMPOTENCY_KEY_LENGTH, PREFER_WAIT_SECONDS } from './calls'
 import { exampleCsv, exampleNdjson, exampleReading } from './examples'
 import { PROBLEMS } from './problems'
@@ -27,6 +28,9 @@ export function openApiDocument({ baseUrl }: { baseUrl: string }): Json {
       '/api/v1/submissions/{id}': { get: getSubmission() },
       '/api/v1/readings/{id}': { get: getReading() },
       '/api/v1/readings/{id}/certificate.pdf': { get: getCertificate() },
+      '/api/v1/readings/{id}/certificate.json': { get: getSignedCertificate() },
+      '/api/v1/readings/{id}/certificate': { post: postCertificate() },
+      '/api/verify/{code}': { get: verifyCertificate() },
       '/api/health': { get: getHealth() },
       '/api/ready': { get: getReady() },
     }),
@@ -40,6 +44,9 @@ export function openApiDocument({ baseUrl }: { baseUrl: string }): Json {
         Submission: answerSchema(submissionDetailAnswer),
         ReadingList: answerSchema(readingListAnswer),
         Reading: answerSchema(readingDetailAnswer),
+        Certificate: answerSchema(certificateAnswer),
+        SignedCertificate: answerSchema(signedCertificateAnswer),
+        PublicCertificate: answerSchema(publicCertificateAnswer),
         Health: answerSchema(healthAnswer),
         Ready: answerSchema(readyAnswer),
         Problem: answerSchema(problemAnswer),
@@ -109,8 +116,39 @@ function getCertificate(): Json {
   return operation('GET', '/api/v1/readings/{id}/certificate.pdf', {
     tags: ['readings'],
     security: [{ deviceToken: [] }],
+    parameters: [idParameter('Id of the reading.'), { name: 'format', in: 'query', required: false, schema: { type: 'string', enum: ['a4', 'letter'], default: 'a4' } }],
+    responses: { 200: { description: 'The certificate.', content: { 'application/pdf': {} } }, ...problems(400, 401, 403, 404, 429, 500, 503) },
+  })
+}
+
+function getSignedCertificate(): Json {
+  return operation('GET', '/api/v1/readings/{id}/certificate.json', {
+    tags: ['readings'],
+    security: [{ deviceToken: [] }],
     parameters: [idParameter('Id of the reading.')],
-    responses: { 200: { description: 'The certificate.', content: { 'application/pdf': {} } }, ...problems(401, 403, 404, 429, 500, 503) },
+    responses: { 200: { description: 'The statement, and the signature over its canonical JSON (RFC 8785).', content: jsonContent('SignedCertificate') }, ...problems(401, 403, 404, 429, 500, 503) },
+  })
+}
+
+function postCertificate(): Json {
+  return operation('POST', '/api/v1/readings/{id}/certificate', {
+    tags: ['readings'],
+    security: [{ deviceToken: [] }],
+    parameters: [idParameter('Id of the reading.')],
+    responses: {
+      200: { description: 'The one that there was.', content: jsonContent('Certificate') },
+      201: { description: 'Issued now.', content: jsonContent('Certificate') },
+      ...problems(401, 403, 404, 422, 429, 500, 503),
+    },
+  })
+}
+
+function verifyCertificate(): Json {
+  return operation('GET', '/api/verify/{code}', {
+    tags: ['readings'],
+    security: [],
+    parameters: [{ name: 'code', in: 'path', required: true, description: 'Code of the certificate; case, spaces and hyphens do not count.', schema: { type: 'string' } }],
+    responses: { 200: { description: 'There is such a certificate.', content: jsonContent('PublicCertificate') }, ...problems(404, 500, 503) },
   })
 }
 

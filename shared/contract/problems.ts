@@ -35,6 +35,6 @@ export const PROBLEMS = [
   { code: 'cross-site', status: 403, meaning: 'The request did not come from a page of this server.' },
   { code: 'demo', status: 403, meaning: 'Demo accounts work only on the machine itself.' },
   { code: 'no-certificate', status: 404, meaning: 'No certificate has been issued for this reading.' },
-  { code: 'certificate-withdrawn', status: 409, meaning: 'The certificate has been withdrawn.' },
+  { code: 'certificate-withdrawn', status: 422, meaning: 'The certificate of this revision was withdrawn; a corrected reading gets another.' },
   { code: 'signing-key', status: 503, meaning: 'This server has no signing key, so it issues no certificates.' },
 ] as const

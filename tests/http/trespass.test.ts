@@ -17,6 +17,7 @@ beforeAll(async () => {
   foreign.submissions = sent.body.submission.id
   foreign.readings = sent.body.readings[0].id
   await signInAs(suite.server, 'b', 'owner')
+  foreign.certificates = (await request(suite.server, `/api/v1/readings/${foreign.readings}/certificate`, { method: 'POST', cookie: await signInAs(suite.server, 'b', 'quality'), headers: { 'sec-fetch-site': 'same-origin' } })).body.id
   foreign.sessions = (await suite.owner`select id from sessions where organisation_id = ${suite.b.organisationId} limit 1`)[0]!.id
   foreign.tokens = (await suite.owner`select id from device_tokens where organisation_id = ${suite.b.organisationId} limit 1`)[0]!.id
 })
@@ -37,7 +38,7 @@ describe('another organisation\'s rows', () => {
 
   // Generated from the routes: a new one with an id is tried without anybody thinking of it.
   for (const route of ROUTES.filter(route => route.path.includes(':id'))) {
-    const collection = route.path.split('/').find(part => ['readings', 'submissions', 'sessions', 'tokens'].includes(part))!
+    const collection = route.path.split('/').find(part => ['readings', 'submissions', 'sessions', 'tokens', 'certificates'].includes(part))!
     for (const caller of ['technician', 'advisor', 'quality', 'owner', 'device']) {
       it(`${route.method} ${route.path} as ${caller}: as if it did not exist`, async () => {
         const ask = async (id: string) => {
@@ -77,6 +78,7 @@ describe('another organisation\'s rows', () => {
 
   it('everything untouched: the token, the session and the readings of B still work', async () => {
     expect((await suite.owner`select 1 from sessions where id = ${foreign.sessions!} and revoked_at is null`)).toHaveLength(1)
+    expect((await suite.owner`select 1 from certificates where organisation_id = ${suite.b.organisationId} and withdrawn_at is null`)).toHaveLength(1)
     expect((await suite.owner`select 1 from device_tokens where id = ${foreign.tokens!} and revoked_at is null`)).toHaveLength(1)
     expect((await request(suite.server, `/api/v1/submissions/${foreign.submissions}`, { token: suite.b.token })).body.submission.accepted).toBe(1)
   })
@@ -117,7 +119,7 @@ describe('roles', () => {
   })
 
   it('without a session everything but the public addresses is 401', async () => {
-    const open = new Set(['GET /api/health', 'GET /api/ready', 'GET /api/demo', 'POST /api/session'])
+    const open = new Set(['GET /api/health', 'GET /api/ready', 'GET /api/demo', 'GET /api/verify/:code', 'POST /api/session'])
     for (const route of ROUTES) {
       if (open.has(`${route.method} ${route.path}`)) continue
       const answer = await request(suite.server, route.path.replace(':id', UNKNOWN), { method: route.method, ...(route.method === 'POST' ? { json: {} } : {}) })

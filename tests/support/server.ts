@@ -1,4 +1,5 @@
 import { spawn, type ChildProcess } from 'node:child_process'
+import { generateKeyPairSync } from 'node:crypto'
 import { mkdtemp, rm } from 'node:fs/promises'
 import { createServer } from 'node:net'
 import { tmpdir } from 'node:os'
@@ -10,6 +11,9 @@ const STOPS_WITHIN_MILLISECONDS = 30_000
 
 /** `npm test` names a copy of the build outside the project, where no file of the source tree helps out. */
 const BUILD = process.env.TEST_BUILD ?? fileURLToPath(new URL('../../.output', import.meta.url))
+
+/** Signs the tests' certificates and nothing else. */
+const SIGNING_KEY = generateKeyPairSync('ed25519').privateKey.export({ format: 'der', type: 'pkcs8' }).toString('base64')
 
 export interface TestServer {
   baseUrl: string
@@ -78,6 +82,7 @@ export async function startServer({ databaseUrls, env = {}, port }: StartOptions
       PORT: String(chosen),
       DATABASE_URL: databaseUrls.appUrl,
       NUXT_SESSION_PASSWORD: 'a-session-password-for-tests-only-32+',
+      COLDSLIP_SIGNING_KEY: SIGNING_KEY,
       ...env,
     },
   })

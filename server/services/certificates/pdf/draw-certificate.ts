@@ -27,11 +27,11 @@ export async function drawCertificate({ row, statement, signature, keyId }: Stor
   drawVerdict(paper, statement, verifyAddress)
   drawStrip(paper, stripFromDetail(statement))
   paper.y += 2
-  paper.y += paper.write(basisWords(statement), { size: 7.5, color: SOFT })
+  paper.y += paper.write(basisWords(statement), { size: 7.2, color: SOFT })
   drawFacts(paper, factsOf(statement))
   drawList(paper, 'What this does not show', statement.notShown)
-  drawRules(paper, statement)
   drawProof(paper, statement, { signature: Buffer.from(signature).toString('base64url'), keyId, verifyAddress })
+  drawRules(paper, statement)
   drawFeet(paper, statement)
   return paper.finish()
 }
@@ -97,6 +97,7 @@ function drawList(paper: Paper, title: string, items: readonly string[]): void {
   paper.ensure(14 + items.reduce((sum, item) => sum + paper.heightOf(item, { width, size: 8.2 }), 0))
   heading(paper, title)
   for (const item of items) {
+    paper.ensure(paper.heightOf(item, { width, size: 8.2 }))
     paper.write('–', { size: 8.2 })
     paper.y += paper.write(item, { x: paper.left + 10, width, size: 8.2 })
   }
@@ -105,8 +106,10 @@ function drawList(paper: Paper, title: string, items: readonly string[]): void {
 
 function basisWords({ reported, attempt }: CertificateStatement): string {
   const samples = attempt > 1 ? ` Sample ${attempt} of the visit.` : ''
-  return `Reported by ${reported.basis}, air ${reported.air === 'apart' ? 'apart from' : 'within'} the 100 %, in steps of ${reported.resolution} %. Shown by mass, air-free. Bar: measured. Whisker: U, k = 2. Tick: limit. Hatching: too close to call.${samples}`
+  return `Reported by ${reported.basis}, air ${reported.air === 'apart' ? 'apart from' : 'within'} the 100 %, in steps of ${reported.resolution} %; shown by mass, air-free. Bar measured, whisker U (k = 2), tick limit, hatching too close to call.${samples}`
 }
+
+const NOT_RECORDED = 'not recorded'
 
 type Fact = [name: string, value: string]
 
@@ -115,18 +118,18 @@ function factsOf(statement: CertificateStatement): Fact[] {
   const zone = shop.timeZone
   const calibration = statement.rules.find(rule => rule.rule === 'calibration')
   const facts: (Fact | null)[] = [
-    [SUBJECT_NAMES[subject.kind], subject.label],
-    ['Sampled', `${longStampIn(reading.sampledAt, zone)} ${zoneText(zone)}`],
-    subject.vin === null ? null : ['VIN', subject.vin],
     subject.plate === null ? null : ['Plate', subject.plate],
-    ['Work order', subject.workOrder ?? 'not recorded'],
+    subject.vin === null ? null : ['VIN', subject.vin],
+    subject.plate === null && subject.vin === null ? [SUBJECT_NAMES[subject.kind], subject.label] : null,
+    ['Sampled', `${longStampIn(reading.sampledAt, zone)} ${zoneText(zone)}`],
+    ['Work order', subject.workOrder ?? NOT_RECORDED],
     ['Declared', declared],
     ['Instrument', instrument ? [instrument.serial, instrument.model].filter(Boolean).join(', ') : 'not known here'],
     ['Calibration', [calibration?.outcome === 'warn' ? 'Overdue when sampled.' : calibration?.outcome === 'pass' ? 'In date when sampled.' : '', instrument?.calibrationDueAt ? `Due ${longDayIn(instrument.calibrationDueAt, zone)}, as on record at issue.` : 'Due date not on record.'].filter(Boolean).join(' ')],
-    ['Technician', operator ?? 'not recorded'],
+    ['Technician', operator ?? NOT_RECORDED],
     ['Issued by', [issuedBy.name, issuedBy.certification].filter(Boolean).join(', ')],
-    ['Ambient', conditions.ambientCelsius === null ? 'not recorded' : `${figure(conditions.ambientCelsius, 0.1)} °C`],
-    ['Pressure', conditions.pressureKilopascal === null ? 'not recorded' : `${figure(conditions.pressureKilopascal, 1)} kPa ${conditions.pressureKind ?? ''}`],
+    ['Ambient', conditions.ambientCelsius === null ? NOT_RECORDED : `${figure(conditions.ambientCelsius, 0.1)} °C`],
+    ['Pressure', conditions.pressureKilopascal === null ? NOT_RECORDED : `${figure(conditions.pressureKilopascal, 1)} kPa ${conditions.pressureKind ?? ''}`],
     flags.length === 0 ? null : ['Noted', flags.map(flag => FLAG_WORDS[flag]).join('; ')],
   ]
   return facts.filter(fact => fact !== null)
@@ -142,7 +145,7 @@ function drawFacts(paper: Paper, facts: Fact[]): void {
   const name = 58
   for (let index = 0; index < facts.length; index += 2) {
     const pair = facts.slice(index, index + 2)
-    const style = (fact: Fact) => ({ face: MONO_FACTS.has(fact[0]) ? 'mono' as const : 'sans' as const, size: 8.5, width: column - name })
+    const style = (fact: Fact) => ({ face: MONO_FACTS.has(fact[0]) && fact[1] !== NOT_RECORDED ? 'mono' as const : 'sans' as const, size: 8.5, width: column - name })
     const height = Math.max(...pair.map(fact => paper.heightOf(fact[1], style(fact))))
     paper.ensure(height)
     for (const [side, fact] of pair.entries()) {
@@ -171,6 +174,7 @@ function drawProof(paper: Paper, { reading, limitSet }: CertificateStatement, { 
   paper.ensure(16 + lines.reduce((sum, line) => sum + paper.heightOf(line, style) + 1.5, 0))
   heading(paper, `The record, judged by limits version ${limitSet.version}`)
   for (const line of lines) paper.y += paper.write(line, style) + 1.5
+  paper.y += 7
 }
 
 function drawFeet(paper: Paper, { number, code, shop, demo }: CertificateStatement): void {

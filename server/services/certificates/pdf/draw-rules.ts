@@ -35,7 +35,14 @@ export function drawRules(paper: Paper, statement: CertificateStatement): void {
   const { limitSet, resolution, shop } = statement
   const { left, width, doc } = paper
   const columns = { outcome: left + width - 236, measured: left + width - 150, limit: left + width - 72 }
-  paper.ensure(90)
+  const style = { width: columns.outcome - left - 14, size: 7.3, color: SOFT }
+  const rows = statement.rules.map((rule) => {
+    const decided = rule.rule === statement.decidedBy && (rule.substance ?? null) === (statement.decidedBySubstance ?? null)
+    const words = wordsOf(rule, decided)
+    return { rule, decided, words, height: paper.heightOf(words, style) }
+  })
+  // On one page where it fits on one: a table torn after its first row is no table.
+  paper.ensure(Math.min(paper.pageHeight, 50 + rows.reduce((sum, { height }) => sum + height + 4.5, 0)))
   paper.y += paper.write('Rule by rule, with the limits used', { face: 'bold', size: 9.5 }) + 1
   paper.y += paper.write(`Limits "${limitSet.name}", version ${limitSet.version}, in force since ${longDayIn(limitSet.effectiveFrom, shop.timeZone)}. ${limitSet.decision} ± is U, k = 2.`, { size: 7.5, color: SOFT }) + 3
   const head = { size: 7.5, color: SOFT }
@@ -46,11 +53,7 @@ export function drawRules(paper: Paper, statement: CertificateStatement): void {
   paper.y += 11
   paper.rule(INK, 0.8)
   paper.y += 2.5
-  for (const rule of statement.rules) {
-    const decided = rule.rule === statement.decidedBy && (rule.substance ?? null) === (statement.decidedBySubstance ?? null)
-    const words = wordsOf(rule, decided)
-    const style = { width: columns.outcome - left - 14, size: 7.3, color: SOFT }
-    const height = paper.heightOf(words, style)
+  for (const { rule, decided, words, height } of rows) {
     paper.ensure(height + 5)
     if (decided) doc.rect(left - 8, paper.y, 2.5, height).fill(INK)
     paper.write(words, style)

@@ -45,6 +45,11 @@ export class Paper {
     this.bottom = this.doc.page.height - MARGIN - FOOT
   }
 
+  /** What a whole page has room for. */
+  get pageHeight(): number {
+    return this.bottom - MARGIN
+  }
+
   /** Goes on to the next page where less than `height` is left on this one. */
   ensure(height: number): void {
     if (this.y + height <= this.bottom) return
@@ -118,8 +123,8 @@ export class Paper {
         if (line.width > 0 && word !== ' ' && line.width + wordWidth > width) end()
         // A word longer than the line (a digest, say) is cut where it must be.
         while (wordWidth > width) {
-          const fits = Math.max(1, Math.floor(word.length * width / wordWidth))
           const whole = pieces.map(piece => piece.text).join('')
+          const fits = Math.max(1, Math.floor(whole.length * width / wordWidth))
           for (const piece of this.pieces({ ...style, ...span, text: whole.slice(0, fits) })) add(line, piece)
           end()
           pieces = this.pieces({ ...style, ...span, text: whole.slice(fits) })
