@@ -2,7 +2,7 @@ import { createHash, randomUUID } from 'node:crypto'
 import { gzipSync } from 'node:zlib'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { readingsToCsv } from '#shared/intake/csv-write'
-import { request, settled, signInAs } from '../support/client'
+import { request, settled, signInAs, until } from '../support/client'
 import { goodReading } from '../support/readings'
 import { startSuite, type Suite } from '../support/suite'
 
@@ -219,5 +219,17 @@ describe('a device that sends too much', () => {
     } finally {
       await slow.stop()
     }
+  })
+})
+
+describe('a delivery that can\'t be read as a whole', () => {
+  it('C20: one row too many fails it with 0 readings, and says the limit', async () => {
+    const row = [...readingsToCsv([{ reading: goodReading('row') }])].join('').trim().split(/\r?\n/)
+    const body = gzipSync(`${row[0]}\n${Array.from({ length: 200_001 }, (_, i) => row[1]!.replace('row', `r${i}`)).join('\n')}`, { level: 1 })
+    const answer = await request(suite.server, '/api/v1/readings', { token: suite.a.token, body, headers: { 'content-type': 'text/csv', 'content-encoding': 'gzip' } })
+    expect(answer.status).toBe(202)
+    const submission = await until(() => request(suite.server, `/api/v1/submissions/${answer.body.submission.id}`, { token: suite.a.token }), ({ body: { submission } }) => submission.status === 'failed', 55_000)
+    expect(submission.body.submission).toMatchObject({ accepted: 0, failure: { code: 'too-many-rows' } })
+    expect(submission.body.submission.failure.reason).toContain('200000')
   })
 })

@@ -4,7 +4,8 @@ import { checkRecord, placeRefusal, senderIdOf } from '#shared/intake/check-reco
 import { flagsFor } from '#shared/intake/flags'
 import { INTAKE_LIMITS } from '#shared/intake/limits'
 import type { RawRecord } from '#shared/intake/raw-record'
-import { refuse, type Refusal } from '#shared/intake/refusal'
+import { refuse, type DecodeFailure, type Refusal } from '#shared/intake/refusal'
+import type { SubmissionFailure } from '../../database/schema/submissions'
 import { withOrganisationBulk } from '../../database/tenancy'
 import { uuidV7 } from '../ids/uuid-v7'
 import { commitChunk, type Chunk } from './commit-chunk'
@@ -34,13 +35,21 @@ export async function processSubmission({ organisationId, submissionId }: { orga
 
 type PreparedChunk = Omit<Chunk, 'last'>
 
+/** From this size on, a fault of the whole (too many rows, cut gzip) may show only after chunks were committed. */
+const READ_THROUGH_BYTES = 4 * 1024 * 1024
+
+const decode = (submission: OpenSubmission) => decodeSubmission({
+  mediaType: submission.mediaType,
+  contentEncoding: submission.contentEncoding,
+  chunks: chunksOf(submission),
+}, INTAKE_LIMITS)
+
 async function run(submission: OpenSubmission): Promise<void> {
   const report = { encoding: null as string | null, delimiter: null as string | null, extraColumns: [] as string[] }
-  const decoded = decodeSubmission({
-    mediaType: submission.mediaType,
-    contentEncoding: submission.contentEncoding,
-    chunks: chunksOf(submission),
-  }, INTAKE_LIMITS)
+  const large = submission.byteLength > READ_THROUGH_BYTES || submission.contentEncoding !== null
+  const fault = submission.nextOrdinal === 1 && large ? await faultOfWhole(submission) : null
+  if (fault) return failSubmission(submission, fault, report)
+  const decoded = decode(submission)
 
   let previous: PreparedChunk | null = null
   let committing: Promise<void> = Promise.resolve()
@@ -49,7 +58,7 @@ async function run(submission: OpenSubmission): Promise<void> {
     if ('failure' in event) {
       await committing
       if (previous) await commitChunk(submission, { ...previous, last: null })
-      await failSubmission(submission, { code: event.failure.code, reason: `${event.failure.reason} ${event.failure.mend}`, place: event.failure.place }, report)
+      await failSubmission(submission, told(event.failure), report)
       return
     }
     if ('report' in event) {
@@ -70,6 +79,14 @@ async function run(submission: OpenSubmission): Promise<void> {
   }
   await committing
   await commitChunk(submission, { ...(previous ?? { firstOrdinal: submission.nextOrdinal, nextOrdinal: submission.nextOrdinal, candidates: [], refused: [], received: 0 }), last: report })
+}
+
+const told = ({ code, reason, mend, place }: DecodeFailure): SubmissionFailure => ({ code, reason: `${reason} ${mend}`, place })
+
+/** Reads a large delivery through before anything of it is kept: what can't be read as a whole leaves no half behind. */
+async function faultOfWhole(submission: OpenSubmission): Promise<SubmissionFailure | null> {
+  for await (const event of decode(submission)) if ('failure' in event) return told(event.failure)
+  return null
 }
 
 /** The part of the work that needs no database: validate, digest, normalise. */

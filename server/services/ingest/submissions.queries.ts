@@ -18,6 +18,7 @@ export interface OpenSubmission {
   instrumentSerial: string | null
   mediaType: string
   contentEncoding: string | null
+  byteLength: number
   receivedAt: Date
   sha256: Uint8Array
   actor: string
@@ -33,7 +34,7 @@ export async function takeUp(tx: BulkTransaction, organisationId: string, submis
     where s.organisation_id = ${organisationId} and s.id = ${submissionId} and s.status in ('received', 'processing')
       and h.organisation_id = s.organisation_id and h.id = s.shop_id
     returning s.id, s.shop_id as "shopId", h.time_zone as "timeZone", s.source, s.sender, s.media_type as "mediaType",
-      s.content_encoding as "contentEncoding", s.received_at as "receivedAt", s.sha256, s.attempt, s.next_ordinal as "nextOrdinal",
+      s.content_encoding as "contentEncoding", s.byte_length::float8 as "byteLength", s.received_at as "receivedAt", s.sha256, s.attempt, s.next_ordinal as "nextOrdinal",
       s.person_id as "personId", s.instrument_id as "instrumentId",
       (select i.serial from instruments i where i.organisation_id = s.organisation_id and i.id = s.instrument_id) as "instrumentSerial"`
   if (!row) return null
