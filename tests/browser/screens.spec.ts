@@ -30,7 +30,7 @@ const SCREENS: Screen[] = [
   { name: 'sign-in', path: () => '/sign-in', signedOut: true },
   { name: 'documentation', path: () => '/docs/intake', signedOut: true },
   { name: 'bench', path: () => '/bench' },
-  { name: 'readings', path: () => '/readings?verdict=sample-again' },
+  { name: 'readings', path: () => '/readings' },
   { name: 'readings, filters open', path: () => '/readings?verdict=isolate&subject=vehicle', prepare: page => page.getByRole('button', { name: /^Filters/ }).click() },
   { name: 'readings, nothing found', path: () => '/readings?text=zz-not-there' },
   { name: 'readings, one open', only: 'desktop', path: async client => `/readings?open=${await readingWith(client, 'connect-purge-air')}`, prepare: page => page.locator('.reading-sheet').waitFor() },
@@ -75,11 +75,12 @@ async function smallControls(page: Page): Promise<string[]> {
   }))
 }
 
-/** By how much the page can be moved sideways, and on a desk, where the parts scroll by themselves, down. */
+/** By how much the page or a part that scrolls by itself can be moved sideways, and on a desk, where only parts scroll, the page down. */
 async function overhang(page: Page) {
   return page.evaluate(() => {
     const { scrollWidth, clientWidth, scrollHeight, clientHeight } = document.documentElement
-    return { sideways: scrollWidth - clientWidth, down: scrollHeight - clientHeight, shell: document.querySelector('.shell') !== null }
+    const parts = [...document.querySelectorAll('.work, .list-side, .pane')].map(part => part.scrollWidth - part.clientWidth)
+    return { sideways: Math.max(scrollWidth - clientWidth, ...parts), down: scrollHeight - clientHeight, shell: document.querySelector('.shell') !== null }
   })
 }
 
