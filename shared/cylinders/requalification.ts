@@ -18,10 +18,14 @@ const INTERVALS: Readonly<Record<RequalificationMethod, { first: number, then: n
 export function addYears(day: string, years: number): string {
   const match = /^(\d{4})-(\d{2})-(\d{2})$/.exec(day)
   if (!match) throw new RangeError(`"${day}" is no day`)
-  const year = Number(match[1]) + years
-  const last = new Date(Date.UTC(year, Number(match[2]), 0)).getUTCDate()
-  return `${String(year).padStart(4, '0')}-${match[2]}-${String(Math.min(Number(match[3]), last)).padStart(2, '0')}`
+  const [year, month, date] = [Number(match[1]), Number(match[2]), Number(match[3])]
+  if (month < 1 || month > 12 || date < 1 || date > daysIn(year, month)) throw new RangeError(`"${day}" is no day`)
+  const later = year + years
+  return `${String(later).padStart(4, '0')}-${match[2]}-${String(Math.min(date, daysIn(later, month))).padStart(2, '0')}`
 }
+
+/** Days of a month, 1 to 12. */
+const daysIn = (year: number, month: number): number => new Date(Date.UTC(year, month, 0)).getUTCDate()
 
 /** When a cylinder is due: from its original test for the first time, from the last test after that. */
 export function requalificationDue({ testedOn, method, first }: { testedOn: string, method: RequalificationMethod, first: boolean }): Requalification {
@@ -29,9 +33,9 @@ export function requalificationDue({ testedOn, method, first }: { testedOn: stri
   return { due: addYears(testedOn, first ? interval.first : interval.then), thenEveryYears: interval.then }
 }
 
-/** DOT 39 cylinders are for one trip: never refilled, never for recovered refrigerant (49 CFR 178.65, from memory). */
+/** DOT 39 cylinders, however it is written (DOT-39, DOT39), are for one trip: never refilled, never for recovered refrigerant (49 CFR 178.65, from memory). */
 export function mayBeRefilled(specification: string): boolean {
-  return !/\b39\b/.test(specification)
+  return !/(?<!\d)39(?!\d)/.test(specification)
 }
 
 /** Last day on which a record must still be kept. */

@@ -24,7 +24,7 @@ export interface CatalogueEntry {
   /** Lower flammable limit in air at 25 °C; null for class 1. */
   lowerFlammableLimitVolumePercent: Sourced<number> | null
   transport: Sourced<{ number: string, name: string, division: '2.1' | '2.2' }>
-  /** Mass percent of a blend's parts. */
+  /** Mass percent of a blend's parts (ASHRAE 34); null for a single substance. */
   blend: Partial<Record<Designation, number>> | null
 }
 
@@ -33,7 +33,6 @@ const ASHRAE = 'ASHRAE 34'
 /** Where the warming potentials come from. */
 export const GWP_SOURCE = 'IPCC AR4, AR5 (without feedbacks) and AR6 WG1 table 7.SM.7, 100 years'
 const TRANSPORT = '49 CFR 172.101'
-
 
 interface Row {
   safety: SafetyClass
@@ -57,8 +56,8 @@ const ROWS: Record<Designation, Row> = {
   'R-134a': { safety: 'A1', boiling: [-26.1, -26.1], ozone: 0, gwp: [1430, 1300, 1530], un: 'UN3159', name: '1,1,1,2-Tetrafluoroethane or Refrigerant gas R 134a', division: '2.2' },
   'R-1234yf': { safety: 'A2L', boiling: [-29.5, -29.5], ozone: 0, gwp: [4, 1, 0.501], gwpNote: 'AR4: a figure of the European Union, not of the IPCC. AR5: "below 1", taken as 1.', lfl: 6.2, un: 'UN3161', name: 'Liquefied gas, flammable, n.o.s. (2,3,3,3-tetrafluoropropene)', division: '2.1', transportMark: 'from memory' },
   'R-152a': { safety: 'A2', boiling: [-24.0, -24.0], ozone: 0, gwp: [124, 138, 164], lfl: 4.8, un: 'UN1030', name: '1,1-Difluoroethane or Refrigerant gas R 152a', division: '2.1' },
-  'R-290': { safety: 'A3', boiling: [-42.1, -42.1], ozone: 0, gwp: [3, null, 0.02], gwpNote: 'AR4: a figure of the European Union, not of the IPCC.', lfl: 2.1, un: 'UN1978', name: 'Propane', division: '2.1' },
-  'R-600a': { safety: 'A3', boiling: [-11.8, -11.8], ozone: 0, gwp: [3, null, null], gwpNote: 'AR4: a figure of the European Union, not of the IPCC. AR6 names no value; it is below 1.', lfl: 1.8, un: 'UN1969', name: 'Isobutane', division: '2.1' },
+  'R-290': { safety: 'A3', boiling: [-42.1, -42.1], ozone: 0, gwp: [3, null, 0.02], gwpNote: 'AR4: a figure of the European Union, not of the IPCC. AR5: no value found.', lfl: 2.1, un: 'UN1978', name: 'Propane', division: '2.1' },
+  'R-600a': { safety: 'A3', boiling: [-11.8, -11.8], ozone: 0, gwp: [3, null, null], gwpNote: 'AR4: a figure of the European Union, not of the IPCC. AR5: no value found. AR6 names none; it is below 1.', lfl: 1.8, un: 'UN1969', name: 'Isobutane', division: '2.1' },
   'R-744': { safety: 'A1', boiling: null, ozone: 0, gwp: [1, 1, 1], un: 'UN1013', name: 'Carbon dioxide', division: '2.2', transportMark: 'from memory' },
   'R-32': { safety: 'A2L', boiling: [-51.7, -51.7], ozone: 0, gwp: [675, 677, 771], lfl: 14.4, un: 'UN3252', name: 'Difluoromethane or Refrigerant gas R 32', division: '2.1' },
   'R-125': { safety: 'A1', safetyMark: 'from memory', boiling: [-48.1, -48.1], ozone: 0, gwp: [3500, 3170, 3740], un: 'UN3220', name: 'Pentafluoroethane or Refrigerant gas R 125', division: '2.2' },

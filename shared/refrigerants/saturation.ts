@@ -1,12 +1,11 @@
+import { kelvinFromCelsius } from '../units/temperature'
 import { OutOfRange } from './out-of-range'
 import { SATURATION_FITS, type Saturated, type SaturationFit } from './saturation-fits'
-
-export const ZERO_CELSIUS_KELVIN = 273.15
 
 function fitAt(substance: Saturated, celsius: number): { fit: SaturationFit, kelvin: number, theta: number } {
   const fit = SATURATION_FITS[substance]
   if (!(celsius >= fit.lowestCelsius && celsius <= fit.highestCelsius)) throw new OutOfRange(`Temperature of ${substance}`, celsius, fit.lowestCelsius, fit.highestCelsius, '°C')
-  const kelvin = celsius + ZERO_CELSIUS_KELVIN
+  const kelvin = kelvinFromCelsius(celsius)
   return { fit, kelvin, theta: 1 - kelvin / fit.criticalKelvin }
 }
 

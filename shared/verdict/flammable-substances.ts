@@ -1,16 +1,20 @@
-import type { Designation, Substance } from '../refrigerants/designations'
+import { CATALOGUE, type SafetyClass } from '../refrigerants/catalogue'
+import { DESIGNATIONS, type Designation, type Substance } from '../refrigerants/designations'
 
-/** Components of the blends in the catalogue (ASHRAE 34): an instrument that names them apart has found the blend, not a contamination. */
-const BLENDS: Partial<Record<Designation, readonly Substance[]>> = {
-  'R-404A': ['R-125', 'R-143a', 'R-134a'],
-  'R-407C': ['R-32', 'R-125', 'R-134a'],
-  'R-410A': ['R-32', 'R-125'],
-}
+/** Parts of each blend: an instrument that names them apart has found the blend, not a contamination. */
+const BLEND_PARTS: ReadonlyMap<Designation, ReadonlySet<string>> = new Map(
+  DESIGNATIONS.flatMap((designation) => {
+    const { blend } = CATALOGUE[designation]
+    return blend ? [[designation, new Set(Object.keys(blend))] as const] : []
+  }),
+)
+
+const ofClass = (...classes: SafetyClass[]): Substance[] => DESIGNATIONS.filter(designation => classes.includes(CATALOGUE[designation].safetyClass.value))
 
 /** ASHRAE 34 classes 3 and 2, and hydrocarbons not told apart. */
-const FLAMMABLE: ReadonlySet<Substance> = new Set<Substance>(['HC', 'R-290', 'R-600a', 'R-152a'])
+const FLAMMABLE: ReadonlySet<Substance> = new Set<Substance>(['HC', ...ofClass('A2', 'A3')])
 /** ASHRAE 34 class 2L. */
-const MILDLY_FLAMMABLE: ReadonlySet<Substance> = new Set<Substance>(['R-1234yf', 'R-32', 'R-143a'])
+const MILDLY_FLAMMABLE: ReadonlySet<Substance> = new Set(ofClass('A2L'))
 
 /**
  * From this share on, a foreign 2L refrigerant makes the content flammable. R-513A, 56 % R-1234yf with
@@ -21,7 +25,7 @@ export const MILDLY_FLAMMABLE_PERCENT = 50
 
 /** True for the declared refrigerant itself and for the components of a declared blend. */
 export function belongsTo(declared: Designation, substance: Substance): boolean {
-  return substance === declared || BLENDS[declared]?.includes(substance) === true
+  return substance === declared || BLEND_PARTS.get(declared)?.has(substance) === true
 }
 
 export const isFlammable = (substance: Substance): boolean => FLAMMABLE.has(substance)

@@ -1,4 +1,4 @@
-import type { JudgedSample, Quantity } from './sample'
+import { NOT_REPORTED, type JudgedSample, type Quantity } from './sample'
 
 /** 99 % points of chi-square for 1 to 9 degrees of freedom (NIST/SEMATECH e-Handbook 1.3.6.7.4). */
 const CHI_SQUARE_99 = [6.635, 9.210, 11.345, 13.277, 15.086, 16.812, 18.475, 20.090, 21.666]
@@ -6,9 +6,11 @@ const CHI_SQUARE_99 = [6.635, 9.210, 11.345, 13.277, 15.086, 16.812, 18.475, 20.
 /** After a sample that disagrees with the others, so many that agree must follow before it is passed over. */
 const AGREEING_AFTER_OUTLIER = 3
 
-/** Σ (x − x̄)²/u² of one quantity against chi-square with n − 1 degrees of freedom, at 99 %. */
-function agree(quantities: Quantity[]): boolean {
+/** Σ (x − x̄)²/u² of one quantity against chi-square with n − 1 degrees of freedom, at 99 %. A sample that did not report it says nothing either way. */
+function agree(given: Quantity[]): boolean {
+  const quantities = given.filter(quantity => quantity !== NOT_REPORTED)
   const n = quantities.length
+  if (n < 2) return true
   const mean = quantities.reduce((sum, q) => sum + q.percent, 0) / n
   let chi2 = 0
   for (const { percent, u } of quantities) chi2 += u > 0 ? ((percent - mean) / u) ** 2 : percent === mean ? 0 : Infinity

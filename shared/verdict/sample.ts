@@ -77,9 +77,9 @@ export function judgedSample(composition: NormalisedComposition, declared: Desig
  */
 export function meanSample(samples: JudgedSample[]): JudgedSample {
   if (samples.length === 1) return samples[0]!
-  const n = samples.length
   const mean = (quantities: Quantity[]): Quantity => {
-    if (quantities.every(q => q === NOT_REPORTED)) return NOT_REPORTED
+    const n = quantities.length
+    if (n === 0) return NOT_REPORTED
     let percent = 0
     let u2 = 0
     let limit: number | null = 0
@@ -88,14 +88,16 @@ export function meanSample(samples: JudgedSample[]): JudgedSample {
       u2 += q.u * q.u
       limit = limit === null || q.detectionLimit === null ? null : Math.max(limit, q.detectionLimit)
     }
-    return { percent, u: Math.sqrt(u2) / n, detectionLimit: quantities.length === n ? limit : null }
+    return { percent, u: Math.sqrt(u2) / n, detectionLimit: limit }
   }
+  // A sample that left hydrocarbons or the unidentified out must not halve what another one found.
+  const meanOfReported = (quantities: Quantity[]) => mean(quantities.filter(q => q !== NOT_REPORTED))
   const substances = new Set(samples.flatMap(sample => sample.foreign.map(({ substance }) => substance)))
   const airs = samples.map(sample => sample.air)
   return {
     purity: mean(samples.map(sample => sample.purity)),
-    flammable: mean(samples.map(sample => sample.flammable)),
-    unknown: mean(samples.map(sample => sample.unknown)),
+    flammable: meanOfReported(samples.map(sample => sample.flammable)),
+    unknown: meanOfReported(samples.map(sample => sample.unknown)),
     foreign: [...substances].map(substance => ({
       substance,
       quantity: mean(samples.map(sample => sample.foreign.find(item => item.substance === substance)?.quantity ?? NOT_REPORTED)),
