@@ -1,6 +1,6 @@
 import type { Designation, Substance } from '../refrigerants/designations'
 import { molarMassGramsPerMole } from '../refrigerants/molar-mass'
-import { bubblePressureKilopascal, type LiquidMassFractions } from '../refrigerants/mixture'
+import { bubblePressureKilopascal, bubbleRangeCelsius, type LiquidMassFractions } from '../refrigerants/mixture'
 import { OutOfRange } from '../refrigerants/out-of-range'
 import { isSaturated } from '../refrigerants/saturation-fits'
 import { saturationPressureKilopascal, vapourDensityKilogramsPerCubicMetre } from '../refrigerants/saturation'
@@ -28,10 +28,11 @@ export interface PressureCheckInput {
 }
 
 /**
- * `none`: what is expected. `inside-uncertainty`: an excess, but too small to be told from the doubt.
+ * `none`: what is expected. `inside-uncertainty`: an excess, but too small to be told from the doubt, or
+ * no more than a pair without published constants may give.
  * `air`: more than the identified composition explains. `contamination-explains`: above the declared
  * refrigerant's saturation, and the other substances found explain it. `no-liquid`: below what any liquid
- * would give: the charge is gas only (low charge). `unidentified`: too much that could not be told.
+ * would give: the charge is gas only (low charge). `unidentified`: too much whose pressure is not known.
  * `out-of-range`: outside the range of the formulas.
  */
 export type PressureOutcome = 'none' | 'inside-uncertainty' | 'air' | 'contamination-explains' | 'no-liquid' | 'unidentified' | 'out-of-range'
@@ -94,13 +95,11 @@ function identified(parts: PressureCheckInput['parts']): { liquid: LiquidMassFra
 function judge(input: PressureCheckInput, measured: number, liquid: LiquidMassFractions): PressureCheck {
   const { temperatureCelsius: celsius, declared } = input
   const expected = bubblePressureKilopascal({ liquidMassFractions: liquid, celsius })
-  const above = bubblePressureKilopascal({ liquidMassFractions: liquid, celsius: celsius + SLOPE_STEP })
-  const below = bubblePressureKilopascal({ liquidMassFractions: liquid, celsius: celsius - SLOPE_STEP })
-  const slope = (above.kilopascalAbsolute - below.kilopascalAbsolute) / (2 * SLOPE_STEP)
-  const uncertainty = 2 * Math.hypot(input.pressureUncertaintyKilopascal, slope * input.temperatureUncertaintyKelvin)
+  const uncertainty = 2 * Math.hypot(input.pressureUncertaintyKilopascal, slopeOf(liquid, celsius) * input.temperatureUncertaintyKelvin)
   const excess = measured - expected.kilopascalAbsolute
+  const surelyAbove = measured - expected.highestKilopascalAbsolute
   const alone = isSaturated(declared) ? saturationPressureKilopascal({ substance: declared, celsius }) : null
-  const outcome = outcomeOf(excess, uncertainty, alone === null ? null : measured - alone)
+  const outcome = outcomeOf(excess, surelyAbove, uncertainty, alone === null ? null : measured - alone)
   return {
     outcome,
     measuredKilopascalAbsolute: measured,
@@ -114,9 +113,19 @@ function judge(input: PressureCheckInput, measured: number, liquid: LiquidMassFr
   }
 }
 
-function outcomeOf(excess: number, uncertainty: number, aboveDeclared: number | null): PressureOutcome {
+/** Change of the bubble pressure in kilopascal per kelvin, from a step to either side that stays inside the range of the formulas. */
+function slopeOf(liquid: LiquidMassFractions, celsius: number): number {
+  const { lowestCelsius, highestCelsius } = bubbleRangeCelsius(liquid)
+  const low = Math.max(lowestCelsius, celsius - SLOPE_STEP)
+  const high = Math.min(highestCelsius, celsius + SLOPE_STEP)
+  const at = (step: number) => bubblePressureKilopascal({ liquidMassFractions: liquid, celsius: step }).kilopascalAbsolute
+  return (at(high) - at(low)) / (high - low)
+}
+
+function outcomeOf(excess: number, surelyAbove: number, uncertainty: number, aboveDeclared: number | null): PressureOutcome {
   if (excess < -uncertainty) return 'no-liquid'
-  if (excess > uncertainty) return 'air'
+  if (surelyAbove > uncertainty) return 'air'
+  if (excess > uncertainty) return 'inside-uncertainty'
   if (aboveDeclared !== null && aboveDeclared > uncertainty) return 'contamination-explains'
   return excess > 0 ? 'inside-uncertainty' : 'none'
 }

@@ -1,5 +1,6 @@
 import { massFractionsFromMole, moleFractionsFromMass } from '../composition/fractions'
-import type { Saturated } from './saturation-fits'
+import { OutOfRange } from './out-of-range'
+import { SATURATION_FITS, type Saturated } from './saturation-fits'
 import { saturationPressureKilopascal } from './saturation'
 
 /** Mass fractions of the liquid; they need not sum to one. */
@@ -30,10 +31,17 @@ const ACTIVITY: Readonly<Record<string, Activity>> = {
   'R-22/R-152a': { a: -0.1759, b: -0.1759, slope: 0.000286 },
 }
 
+/** Temperatures to which the constants were fitted; a mixture outside them is refused. */
+const LOWEST_CELSIUS = 0
+const HIGHEST_CELSIUS = 50
+const FITTED_AT_CELSIUS = 25
+
+/** In place of a pair that has no constants, the strongest of the table: more pressure than that is not reckoned with; common practice, no source. */
+const STRONGEST_ACTIVITY = Math.max(...Object.values(ACTIVITY).flatMap(({ a, b }) => [a, b]))
+
 /** The constants of a pair seen from its first member: a for the first, b for the second; null where none are published. */
 function activityOf(first: Saturated, second: Saturated, celsius: number): { a: number, b: number } | null {
-  const moved = 298.15
-  const shift = celsius + 273.15 - moved
+  const shift = celsius - FITTED_AT_CELSIUS
   const forward = ACTIVITY[`${first}/${second}`]
   if (forward) return { a: forward.a + forward.slope * shift, b: forward.b + forward.slope * shift }
   const backward = ACTIVITY[`${second}/${first}`]
@@ -47,9 +55,13 @@ function moleFractions(liquid: LiquidMassFractions): [Saturated, number][] {
 /**
  * ln γ of each component from the excess energy G/RT = Σ pairs x_i x_j (A_ji x_i + A_ij x_j) (Margules),
  * which for two components gives the two-constant form above and for equal constants the symmetric one.
+ *
+ * @param unpublished both constants of a pair that has none; 0 leaves it ideal.
+ * @throws OutOfRange for a mixture outside 0 to 50 °C.
  */
-function logActivities(parts: [Saturated, number][], celsius: number): { logs: number[], incomplete: boolean } {
+function logActivities(parts: [Saturated, number][], celsius: number, unpublished = 0): { logs: number[], incomplete: boolean } {
   const n = parts.length
+  if (n > 1 && !(celsius >= LOWEST_CELSIUS && celsius <= HIGHEST_CELSIUS)) throw new OutOfRange('Temperature of a mixture', celsius, LOWEST_CELSIUS, HIGHEST_CELSIUS, '°C')
   const logs = new Array<number>(n).fill(0)
   let incomplete = false
   let excess = 0
@@ -58,13 +70,10 @@ function logActivities(parts: [Saturated, number][], celsius: number): { logs: n
   for (let i = 0; i < n; i++) {
     for (let j = i + 1; j < n; j++) {
       const activity = activityOf(parts[i]![0], parts[j]![0], celsius)
-      if (!activity) {
-        incomplete = true
-        continue
-      }
+      incomplete ||= activity === null
       const [xi, xj] = [parts[i]![1], parts[j]![1]]
       // At infinite dilution of i in j its ln γ is a, of j in i it is b.
-      const { a, b } = activity
+      const { a, b } = activity ?? { a: unpublished, b: unpublished }
       const g = xi * xj * (b * xi + a * xj)
       excess += g
       gradient[i]! += xj * (2 * b * xi + a * xj)
@@ -80,19 +89,39 @@ export interface BubblePressure {
   kilopascalAbsolute: number
   /** True where a pair has no published constants (R-1234yf with R-12 or R-22, R-744 with anything): Raoult alone is then too low. */
   lowerEstimate: boolean
+  /** What such a pair may give at the most; the same as the pressure where all constants are published. */
+  highestKilopascalAbsolute: number
+}
+
+/** Temperatures in °C for which the bubble pressure of this liquid can be given. */
+export function bubbleRangeCelsius(liquid: LiquidMassFractions): { lowestCelsius: number, highestCelsius: number } {
+  const parts = moleFractions(liquid)
+  const fits = parts.map(([substance]) => SATURATION_FITS[substance])
+  const mixture = parts.length > 1
+  return {
+    lowestCelsius: Math.max(mixture ? LOWEST_CELSIUS : -Infinity, ...fits.map(fit => fit.lowestCelsius)),
+    highestCelsius: Math.min(mixture ? HIGHEST_CELSIUS : Infinity, ...fits.map(fit => fit.highestCelsius)),
+  }
 }
 
 /**
  * Bubble pressure of a liquid of known composition: Σ x_i γ_i p_sat,i, with the activity constants above.
  *
- * @throws OutOfRange outside the range of a saturation line; RangeError where the fractions are no composition.
+ * @throws OutOfRange outside the range of a saturation line, and for a mixture outside 0 to 50 °C; RangeError where the fractions are no composition.
  */
 export function bubblePressureKilopascal({ liquidMassFractions, celsius }: { liquidMassFractions: LiquidMassFractions, celsius: number }): BubblePressure {
   const parts = moleFractions(liquidMassFractions)
   const { logs, incomplete } = logActivities(parts, celsius)
-  let pressure = 0
-  for (const [i, [substance, x]] of parts.entries()) pressure += x * Math.exp(logs[i]!) * saturationPressureKilopascal({ substance, celsius })
-  return { kilopascalAbsolute: pressure, lowerEstimate: incomplete }
+  const pressure = sumOfPressures(parts, logs, celsius)
+  return {
+    kilopascalAbsolute: pressure,
+    lowerEstimate: incomplete,
+    highestKilopascalAbsolute: incomplete ? sumOfPressures(parts, logActivities(parts, celsius, STRONGEST_ACTIVITY).logs, celsius) : pressure,
+  }
+}
+
+function sumOfPressures(parts: [Saturated, number][], logs: number[], celsius: number): number {
+  return parts.reduce((sum, [substance, x], i) => sum + x * Math.exp(logs[i]!) * saturationPressureKilopascal({ substance, celsius }), 0)
 }
 
 /** The ideal form, Σ x_i p_sat,i: for comparison; the real pressure of refrigerant mixtures is mostly higher. */

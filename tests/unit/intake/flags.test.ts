@@ -23,6 +23,20 @@ describe('flags of a reading', () => {
     expect(flagsAt(age)).toEqual(flags)
   })
 
+  it.each([
+    ['a VIN that fails its check digit', { kind: 'vehicle', vin: '1HGCM82633A004353' }, ['vin-check-digit']],
+    ['one with a letter that no VIN has', { kind: 'vehicle', vin: '1VWBH7AI0DC104945' }, ['vin-check-digit']],
+    ['one that fits, in small letters and with spaces', { kind: 'vehicle', vin: '1hgc m826 33a0 0435 2' }, []],
+    ['a shorter number, as old vehicles have', { kind: 'vehicle', vin: '136277S100123' }, []],
+    ['a vehicle known by its plate', { kind: 'vehicle', plate: 'TST 001' }, []],
+    ['a cylinder whose tag is as long as a VIN', { kind: 'cylinder', tag: '1HGCM82633A004353' }, []],
+  ])('%s', (_, subject, flags) => {
+    const given = reading((value) => {
+      value.subject = subject
+    })
+    expect(flagsFor({ reading: given, sum: agrees, receivedAt: new Date(sampledAt) })).toEqual(flags)
+  })
+
   it('a sum that rounding alone does not explain', () => {
     expect(flagsAt(0, { ...agrees, outcome: 'flagged' })).toEqual(['sum'])
   })

@@ -5,9 +5,10 @@ import { erfc, normalCdf, normalQuantile, normalUpper } from '#shared/statistics
 
 describe('the normal distribution', () => {
   it('agrees with the incomplete gamma function to its last digits, far into the tail', () => {
-    for (let x = 0; x <= 12; x += 0.037) {
+    for (let x = 0; x <= 25; x += 0.037) {
       const reference = incompleteGamma(0.5, x * x).upper
-      expect(Math.abs(erfc(x) / reference - 1), `erfc(${x})`).toBeLessThan(5e-14)
+      // exp(−x²) makes x² times the rounding of its argument, which the reference squares plainly.
+      expect(Math.abs(erfc(x) / reference - 1), `erfc(${x})`).toBeLessThan(1e-14 + x * x * 2 ** -51)
     }
   })
 
