@@ -1,6 +1,7 @@
 import type { ReadingDetail, ReadingRow } from '../api/readings'
 import type { Designation, Substance } from '../refrigerants/designations'
-import { belongsTo, isFlammable } from '../verdict/flammable-substances'
+import { belongsTo, showsBlend } from '../verdict/declared-content'
+import { isFlammable } from '../verdict/flammable-substances'
 import type { RuleName, RuleOutcome, RuleResult } from '../verdict/types'
 import { figure } from './figures'
 import { substanceName } from './substance-look'
@@ -76,8 +77,9 @@ export function stripFromDetail(reading: Judged): Strip {
       outcome: rules.map(rule => rule.outcome).sort((a, b) => OUTCOME_ORDER.indexOf(a) - OUTCOME_ORDER.indexOf(b))[0] ?? null,
     }
   }
+  const blendShown = showsBlend(reading.declared, reading.composition.parts)
   const lanes = reading.composition.parts
-    .filter(part => !belongsTo(reading.declared, part.substance) && (part.massFraction > 0 || part.belowDetection))
+    .filter(part => !belongsTo(reading.declared, part.substance, blendShown) && (part.massFraction > 0 || part.belowDetection))
     .map(part => lane(part.substance, part.massFraction * 100, part.belowDetection, part.massFractionHigh * 100))
     .sort((a, b) => Number(a.belowDetection) - Number(b.belowDetection) || b.percent - a.percent)
   const air = reading.composition.air

@@ -33,15 +33,17 @@ export const GROUP_MOLAR_MASS = {
 
 export interface MolarMassRange { low: number, central: number, high: number }
 
+const RANGES = Object.fromEntries([
+  ...Object.entries(MOLAR_MASS).map(([substance, value]) => [substance, { low: value, central: value, high: value }]),
+  ...Object.entries(GROUP_MOLAR_MASS),
+]) as Record<Substance, MolarMassRange>
+
 /** Grams per mole; one value for a refrigerant, a range for a group. */
 export function molarMassRange(substance: Substance): MolarMassRange {
-  if (substance === 'HC' || substance === 'OTHER') return GROUP_MOLAR_MASS[substance]
-  const value = MOLAR_MASS[substance]
-  return { low: value, central: value, high: value }
+  return RANGES[substance]
 }
 
 /** Grams per mole; of a group its central value. */
 export function molarMassGramsPerMole(substance: Substance | 'air'): number {
-  if (substance === 'air') return AIR_MOLAR_MASS
-  return substance === 'HC' || substance === 'OTHER' ? GROUP_MOLAR_MASS[substance].central : MOLAR_MASS[substance]
+  return substance === 'air' ? AIR_MOLAR_MASS : RANGES[substance].central
 }

@@ -6,20 +6,26 @@ const CHI_SQUARE_99 = [6.635, 9.210, 11.345, 13.277, 15.086, 16.812, 18.475, 20.
 /** After a sample that disagrees with the others, so many that agree must follow before it is passed over. */
 const AGREEING_AFTER_OUTLIER = 3
 
-/** Σ (x − x̄)²/u² of one quantity against chi-square with n − 1 degrees of freedom, at 99 %. A sample that did not report it says nothing either way. */
-function agree(given: Quantity[]): boolean {
-  const quantities = given.filter(quantity => quantity !== NOT_REPORTED)
-  const n = quantities.length
+/** Σ (x − x̄)²/u² of one quantity against chi-square with n − 1 degrees of freedom, at 99 %; of the samples that reported it. */
+function agree(quantities: Quantity[]): boolean {
+  const reported = quantities.filter(q => q !== NOT_REPORTED)
+  const n = reported.length
   if (n < 2) return true
-  const mean = quantities.reduce((sum, q) => sum + q.percent, 0) / n
+  const mean = reported.reduce((sum, q) => sum + q.percent, 0) / n
   let chi2 = 0
-  for (const { percent, u } of quantities) chi2 += u > 0 ? ((percent - mean) / u) ** 2 : percent === mean ? 0 : Infinity
+  for (const { percent, u } of reported) chi2 += u > 0 ? ((percent - mean) / u) ** 2 : percent === mean ? 0 : Infinity
   return chi2 <= CHI_SQUARE_99[Math.min(n - 2, CHI_SQUARE_99.length - 1)]!
 }
 
+/**
+ * Do all samples show the same gas: the declared refrigerant, flammable and unidentified content, and each
+ * foreign refrigerant? Air is left out: it gathers at the top of a charge and differs with what was drawn before.
+ */
 function consistent(samples: JudgedSample[]): boolean {
-  return samples.length < 2
-    || (agree(samples.map(sample => sample.purity)) && agree(samples.map(sample => sample.flammable)) && agree(samples.map(sample => sample.unknown)))
+  if (samples.length < 2) return true
+  if (!agree(samples.map(({ purity }) => purity)) || !agree(samples.map(({ flammable }) => flammable)) || !agree(samples.map(({ unknown }) => unknown))) return false
+  const substances = new Set(samples.flatMap(({ foreign }) => foreign.map(({ substance }) => substance)))
+  return [...substances].every(substance => agree(samples.map(({ foreign }) => foreign.find(entry => entry.substance === substance)?.quantity ?? NOT_REPORTED)))
 }
 
 export interface CombinedSamples {

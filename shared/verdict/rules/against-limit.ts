@@ -33,11 +33,19 @@ function outcomeOf(value: number, u: number, limit: number, sense: LimitSense, d
   return room < -guardBand ? 'fail' : 'unclear'
 }
 
-/** Probability of lying beyond the limit; a share can't be negative, so an upper limit's is cut at zero (JCGM 106:2012 clauses 6 and 7). */
+/** So many standard uncertainties from the limit the probability is 0 or 1 to the ninth decimal. */
+const BEYOND_DOUBT = 6
+
+/**
+ * Probability of lying beyond the limit. A share can't be negative nor above 100, so the normal
+ * distribution is cut there (JCGM 106:2012 clauses 6 and 7); for a minimum the rest to 100 is looked at.
+ */
 function probabilityBeyond(value: number, u: number, limit: number, sense: LimitSense): number | null {
   if (u <= 0) return null
-  if (sense === 'minimum') return normalUpper((value - limit) / u)
-  return normalUpper((limit - value) / u) / normalCdf(value / u)
+  const z = (sense === 'minimum' ? value - limit : limit - value) / u
+  if (z > BEYOND_DOUBT) return 0
+  if (z < -BEYOND_DOUBT) return 1
+  return Math.min(1, normalUpper(z) / normalCdf((sense === 'minimum' ? 100 - value : value) / u))
 }
 
 /** A millionth of a percent: finer than any instrument, and the same number in every place that it is kept. */
@@ -47,21 +55,22 @@ export const toMillionth = (value: number): number => Math.round(value * 1e6) / 
  * One quantity against one limit. What lies below a detection limit that itself keeps the limit passes;
  * where the detection limit is too coarse for that, it is unclear. What was not reported is absent.
  */
-export function againstLimit(rule: RuleName, quantity: Quantity, limit: Limit, sense: LimitSense, decision: DecisionRule, substance?: Substance): RuleResult {
+export function againstLimit(rule: RuleName, quantity: Quantity, { value: limit }: Limit, sense: LimitSense, decision: DecisionRule, substance?: Substance): RuleResult {
+  const result: RuleResult = { rule, outcome: 'absent', measured: null, uncertainty: null, limit, probabilityBeyond: null }
+  if (substance) result.substance = substance
+  if (quantity === NOT_REPORTED) return result
   const { percent, u, detectionLimit } = quantity
-  if (quantity === NOT_REPORTED) return { rule, outcome: 'absent', measured: null, uncertainty: null, limit: limit.value, probabilityBeyond: null }
   if (detectionLimit !== null) {
-    const kept = inside(detectionLimit, limit.value, sense) > 0 || (sense === 'maximum' && inside(detectionLimit, limit.value, sense) === 0)
-    return { rule, ...(substance ? { substance } : {}), outcome: kept ? 'pass' : 'unclear', measured: detectionLimit, uncertainty: null, limit: limit.value, probabilityBeyond: null, belowDetection: true }
+    const room = inside(detectionLimit, limit, sense)
+    result.outcome = room > 0 || (sense === 'maximum' && room === 0) ? 'pass' : 'unclear'
+    result.measured = toMillionth(detectionLimit)
+    result.belowDetection = true
+    return result
   }
-  const chance = probabilityBeyond(percent, u, limit.value, sense)
-  return {
-    rule,
-    ...(substance ? { substance } : {}),
-    outcome: outcomeOf(percent, u, limit.value, sense, decision),
-    measured: toMillionth(percent),
-    uncertainty: toMillionth(COVERAGE_FACTOR * u),
-    limit: limit.value,
-    probabilityBeyond: chance === null ? null : toMillionth(chance),
-  }
+  const chance = probabilityBeyond(percent, u, limit, sense)
+  result.outcome = outcomeOf(percent, u, limit, sense, decision)
+  result.measured = toMillionth(percent)
+  result.uncertainty = toMillionth(COVERAGE_FACTOR * u)
+  result.probabilityBeyond = chance === null ? null : toMillionth(chance)
+  return result
 }
