@@ -1,5 +1,7 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
+import { randomStream } from '#fixtures/demo/random'
+import { inventVin } from '#fixtures/demo/vin'
 import { checkVin, modelYearOf, normaliseVin, withCheckDigit } from '#shared/vehicles/vin'
 
 const ALLOWED = 'ABCDEFGHJKLMNPRSTUVWXYZ0123456789'
@@ -91,5 +93,19 @@ describe('the model year', () => {
   it('is not guessed from a code that is no year', () => {
     for (const code of ['U', 'Z', '0']) expect(withYear(code, '2')).toEqual({ modelYear: null, candidates: [] })
     expect(modelYearOf({ vin: 'short' })).toEqual({ modelYear: null, candidates: [] })
+  })
+})
+
+describe('the VINs of the invented fleet, which has arithmetic of its own', () => {
+  it('fit, with their model year, where they are meant to', () => {
+    const random = randomStream(1, 'vin')
+    for (let year = 1990; year < 2030; year++) {
+      const vin = inventVin(random, 'GA1', year, year * 7, true)
+      expect(checkVin({ vin }), vin).toMatchObject({ valid: true })
+      expect(modelYearOf({ vin }).modelYear).toBe(year)
+      const foreign = inventVin(random, 'GA1', year, year * 7, false)
+      expect(checkVin({ vin: foreign }), foreign).toMatchObject({ valid: false, reason: 'check digit' })
+      expect(modelYearOf({ vin: foreign }).modelYear).toBeNull()
+    }
   })
 })
