@@ -64,6 +64,31 @@ export function sendProblem(event: H3Event, error: unknown): object {
   }
 }
 
+/** Of a refused body so much is still taken in, and for so long: a sender that is cut off in the middle of sending never reads the refusal. */
+const DRAINED_BYTES = 9 * 1024 * 1024
+const DRAINED_MILLISECONDS = 3000
+
+function drainBody({ node: { req: request } }: H3Event): Promise<void> {
+  if (request.complete || request.destroyed || request.readableEnded) return Promise.resolve()
+  return new Promise((resolve) => {
+    let left = DRAINED_BYTES
+    const take = (part: Buffer) => {
+      left -= part.length
+      if (left < 0) end()
+    }
+    const end = () => {
+      clearTimeout(timer)
+      request.off('data', take)
+      request.pause()
+      resolve()
+    }
+    const timer = setTimeout(end, DRAINED_MILLISECONDS)
+    request.once('end', end)
+    request.once('close', end)
+    request.on('data', take)
+  })
+}
+
 /** Every handler under `server/api`: answers are never cached, failures become problems. */
 export function apiHandler<T>(handle: (event: H3Event) => Promise<T> | T) {
   return defineEventHandler(async (event) => {
@@ -71,6 +96,7 @@ export function apiHandler<T>(handle: (event: H3Event) => Promise<T> | T) {
     try {
       return await handle(event)
     } catch (error) {
+      await drainBody(event)
       return sendProblem(event, error)
     }
   })

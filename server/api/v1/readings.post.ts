@@ -1,7 +1,6 @@
 import { awaitVerdicts } from '../../services/ingest/await-verdicts'
 import { receive } from '../../services/ingest/receive'
 import { keepFirstAnswer } from '../../services/ingest/first-answer'
-import { noteTokenUse } from '../../services/instruments/note-token-use'
 
 /** Takes readings in: acknowledged when bytes and job are committed; with `Prefer: wait=N` the verdicts come at once. */
 export default apiHandler(async (event) => {
@@ -16,7 +15,6 @@ export default apiHandler(async (event) => {
       organisationId: device.organisationId, shopId: device.shopId, source: 'device', sender, instrumentId: device.instrumentId, personId: null,
       mediaType, contentEncoding, spool, sha256: spool.digest(), idempotencyKey, receivedAt: new Date(),
     })
-    noteTokenUse(device)
     setResponseHeader(event, 'location', `/api/v1/submissions/${receipt.submissionId}`)
     if (receipt.replayed) setResponseHeader(event, 'idempotency-replayed', 'true')
     if (receipt.firstAnswer) {
