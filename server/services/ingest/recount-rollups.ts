@@ -2,8 +2,8 @@ import { withOrganisationBulk } from '../../database/tenancy'
 
 export interface RollupDifference { shopId: string, day: string, declared: string, verdict: string, kept: number, counted: number }
 
-/** Sums of floating-point numbers differ by the order in which they were added. */
-const SUM_TOLERANCE = 1e-6
+/** Share of a sum by which two additions in another order may differ: far above the rounding of doubles, far below one reading. */
+const SUM_TOLERANCE = 1e-9
 
 /**
  * Counts an organisation's readings anew and holds the kept rollups against it; with `repair` the kept
@@ -28,7 +28,8 @@ export async function recountRollups(organisationId: string, { repair }: { repai
       from (select * from reading_rollups where organisation_id = ${organisationId} and n <> 0) as kept
       full join counted_rollups counted using (shop_id, day, declared, subject_kind, instrument_id, verdict)
       where kept.n is distinct from counted.n or kept.air_n is distinct from counted.air_n
-        or abs(kept.purity_sum - counted.purity_sum) > ${SUM_TOLERANCE} or abs(kept.air_sum - counted.air_sum) > ${SUM_TOLERANCE}
+        or abs(kept.purity_sum - counted.purity_sum) > ${SUM_TOLERANCE} * greatest(1, abs(counted.purity_sum))
+        or abs(kept.air_sum - counted.air_sum) > ${SUM_TOLERANCE} * greatest(1, abs(counted.air_sum))
       order by day, shop_id limit 1000`
     if (repair && differences.length > 0) {
       await tx`delete from reading_rollups where organisation_id = ${organisationId}`
