@@ -21,7 +21,8 @@ export function createLiveStream(path: string) {
   let source: EventSource | null = null
   let retry: ReturnType<typeof setTimeout> | undefined
   let refusals = 0
-  let gap = false
+  // Between the making of the page and the first opening lies a gap too.
+  let gap = true
 
   function tell(news: ReadingsNews | 'caught-up') {
     for (const listener of listeners) listener(news)
